@@ -1,0 +1,1 @@
+"""What is owed on a date."""

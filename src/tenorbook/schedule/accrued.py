@@ -1,0 +1,79 @@
+"""Interest accrued between two postings, read off a finished schedule by its own steps."""
+
+from bisect import bisect_left, bisect_right
+from datetime import date
+from decimal import Decimal
+
+from tenorbook.basis.conventions import FirstPeriod, RowKind
+from tenorbook.schedule.accrual import Accrual
+from tenorbook.schedule.ledger import Item, Schedule
+from tenorbook.schedule.steps import Steps, make_steps
+from tenorbook.terms.terms import Terms
+
+
+def accrued_interest(schedule: Schedule, until: date) -> int:
+    """Interest accrued and unpaid before a day, each item rounded once, in the ledger's unit.
+
+    Args:
+        schedule: of the loan.
+        until: the first day that does not accrue. Events on that day have not happened yet.
+
+    Returns:
+        0 before funding and after the last row; negative where interest was paid in advance.
+    """
+    if not schedule.date[0] < until <= schedule.date[-1]:
+        return 0
+    steps = make_steps(schedule.terms, schedule.date[-1])
+    period = bisect_left(steps.boundaries, until)
+    accrual = Accrual(steps, schedule.terms.interest_rounding)
+    first = 1 if schedule.terms.one_payment else period
+    row = bisect_right(schedule.date, steps.boundaries[first - 1]) - 1
+    for number in range(first, period + 1):
+        row = _run_period(schedule, steps, accrual, number, row, until)
+    return accrual.due() + schedule.carried.get(row, 0) - _prepaid(schedule, steps, period)
+
+
+def _run_period(
+    schedule: Schedule, steps: Steps, accrual: Accrual, number: int, row: int, until: date
+) -> int:
+    """Accrues through one period, or the part of it before `until`; returns the last row passed."""
+    terms, spans = schedule.terms, steps.spans(number)
+    end = min(until, steps.boundaries[number])
+    accrual.start_period()
+    while schedule.date[row + 1] < end:
+        rate = rate_on(terms, schedule.date[row])
+        accrual.run_to(spans, schedule.date[row + 1], schedule.closing[row], row, rate)
+        row += 1
+        if schedule.kind[row] is RowKind.CAPITALIZE:
+            accrual.clear()
+        elif schedule.interest[row]:
+            accrual.pay(schedule.interest[row])
+    accrual.run_to(spans, end, schedule.closing[row], row, rate_on(terms, schedule.date[row]))
+    if terms.first_period in (FirstPeriod.WAIVE, FirstPeriod.PAY_AT_FUNDING):
+        accrual.drop(Item.ODD_DAYS)
+    return row
+
+
+def rate_on(terms: Terms, day: date) -> Decimal:
+    """The annual rate that a day accrues at."""
+    rate = terms.rate
+    for change in terms.repricings:
+        if change.date <= day:
+            rate = change.rate
+    return rate
+
+
+def _prepaid(schedule: Schedule, steps: Steps, period: int) -> int:
+    """Interest that was paid in advance for a period; 0 for loans that do not prepay."""
+    if not schedule.terms.prepays:
+        return 0
+    start = steps.boundaries[period - 1]
+    row = next(
+        row
+        for row in range(bisect_left(schedule.date, start), len(schedule))
+        if schedule.kind[row] is RowKind.PAYMENT
+    )
+    prepaid = Accrual(steps, schedule.terms.interest_rounding)
+    spans = steps.spans(period)
+    prepaid.run_to(spans, spans[-1].end, schedule.opening[row], row, rate_on(schedule.terms, start))
+    return prepaid.due()

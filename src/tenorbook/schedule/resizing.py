@@ -1,0 +1,49 @@
+"""The scheduled amount: sized at funding, and again when an event asks for it."""
+
+from tenorbook.basis.conventions import Repayment
+from tenorbook.schedule.first_period import still_to_capitalize
+from tenorbook.schedule.state import State
+
+_SIZED = (Repayment.LEVEL_PAYMENT, Repayment.LEVEL_PRINCIPAL)
+
+
+def size_at_funding(state: State) -> None:
+    """The first scheduled amount: the note's own, or solved."""
+    terms = state.terms
+    if terms.payment is not None:
+        state.set_instalment(terms.payment, "given by the note")
+    elif terms.repayment in _SIZED:
+        balance = state.balance + still_to_capitalize(state)
+        amount = state.sizer.amount(balance, terms.balloon or 0, state.rate, 0)
+        state.set_instalment(amount, "solved")
+
+
+def settle_pending(state: State) -> None:
+    """Sets or re-amortizes the payment, once the next payment is one that amortizes."""
+    if state.pending is None or state.over:
+        return
+    if state.terms.repayment not in _SIZED:
+        state.pending = None
+    elif state.amortizing(state.paid + 1):
+        pending, state.pending = state.pending, None
+        if isinstance(pending, int):
+            state.set_instalment(pending, "set by the rate change")
+        else:
+            _reamortize(state, pending)
+
+
+def _reamortize(state: State, why: str) -> None:
+    if state.sizer.remaining(state.paid) > 0:
+        balance = state.balance + still_to_capitalize(state)
+        left = min(_balloon_to_leave(state), balance)
+        state.set_instalment(state.sizer.amount(balance, left, state.rate, state.paid), why)
+
+
+def _balloon_to_leave(state: State) -> int:
+    """What re-amortizing leaves to the end: the stated balloon, or what the note's payment leaves."""
+    terms = state.terms
+    if terms.balloon is not None:
+        return terms.balloon
+    if terms.payment is not None and terms.repayment is Repayment.LEVEL_PAYMENT:
+        return state.sizer.left_after(terms.payment, terms.principal, terms.rate)
+    return 0

@@ -1,0 +1,134 @@
+"""Sizing a level payment on the factors of the dated schedule.
+
+After n payments a balance B0 has become ``B0 x G - P x S``: G is the growth of 1, S what payments of 1
+have grown to. Setting that to the balloon gives the payment. G and S are built period by period in
+Decimal with 60 digits; where all factors are equal the sum closes to the ordinary annuity (in
+advance: the annuity due).
+"""
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+from decimal import Context, Decimal, localcontext
+from fractions import Fraction
+from typing import NamedTuple
+
+from tenorbook.basis.conventions import PaymentBasis, PaymentRounding, Repayment
+from tenorbook.basis.rounding import round_payment
+from tenorbook.schedule.steps import Steps
+
+PRECISION = Context(prec=60)
+_BLOCK = 12  # periods a block: a year of months, whose pattern of days recurs
+
+
+class Growth(NamedTuple):
+    """What a run of periods does: a balance becomes balance x `balance` - payment x `payments`."""
+
+    balance: Decimal
+    payments: Decimal
+
+    def then(self, later: "Growth") -> "Growth":
+        """This run followed by a later one."""
+        return Growth(self.balance * later.balance, self.payments * later.balance + later.payments)
+
+
+_NOTHING = Growth(Decimal(1), Decimal(0))
+_PAYMENT_AT_ONCE = Growth(Decimal(1), Decimal(1))
+
+
+def one_period(factor: Fraction) -> Growth:
+    """A period of interest with a payment at its end."""
+    return Growth(1 + Decimal(factor.numerator) / Decimal(factor.denominator), Decimal(1))
+
+
+def equal_periods(factor: Fraction, count: int) -> Growth:
+    """`count` periods of the same factor, in closed form."""
+    rate = Decimal(factor.numerator) / Decimal(factor.denominator)
+    if rate == 0:
+        return Growth(Decimal(1), Decimal(count))
+    growth = (1 + rate) ** count
+    return Growth(growth, (growth - 1) / rate)
+
+
+def dated_periods(numerators: Sequence[int], denominator: int, rate: Fraction) -> Growth:
+    """Periods of uneven factors; blocks with the same pattern of days are worked out once."""
+    if numerators and numerators.count(numerators[0]) == len(numerators):
+        return equal_periods(rate * Fraction(numerators[0], denominator), len(numerators))
+    singles = {num: one_period(rate * Fraction(num, denominator)) for num in set(numerators)}
+    blocks: dict[tuple[int, ...], Growth] = {}
+    total = _NOTHING
+    for start in range(0, len(numerators), _BLOCK):
+        pattern = tuple(numerators[start : start + _BLOCK])
+        if pattern not in blocks:
+            block = _NOTHING
+            for numerator in pattern:
+                block = block.then(singles[numerator])
+            blocks[pattern] = block
+        total = total.then(blocks[pattern])
+    return total
+
+
+@dataclass(frozen=True, slots=True)
+class Sizer:
+    """Sizes the scheduled amount of one loan, at funding and whenever it is re-amortized."""
+
+    steps: Steps
+
+    def remaining(self, paid: int) -> int:
+        """Amortizing payments still to come after `paid` payments, by the number that sizes them."""
+        terms = self.steps.terms
+        return self._sized_to() - max(paid, terms.interest_only)
+
+    def _sized_to(self) -> int:
+        terms = self.steps.terms
+        over = terms.amortized_over
+        return terms.interest_only + over if over else self.steps.last
+
+    def amount(self, balance: int, balloon: int, rate: Decimal, paid: int) -> int:
+        """The level payment, or with level principal the principal part, rounded as the loan says.
+
+        Args:
+            balance: after `paid` payments, in the ledger's unit.
+            balloon: principal to be left after the last payment that sizes it.
+            rate: annual rate in force.
+            paid: payments already made, interest-only ones included.
+        """
+        terms = self.steps.terms
+        with localcontext(PRECISION):
+            if terms.repayment is Repayment.LEVEL_PRINCIPAL:
+                exact = Decimal(balance - balloon) / self.remaining(paid)
+            else:
+                growth = self._growth(rate, paid)
+                exact = (balance * growth.balance - balloon) / growth.payments
+        return round_payment(exact, terms.payment_rounding, terms.payment_step)
+
+    def left_after(self, payment: int, balance: int, rate: Decimal) -> int:
+        """What a given payment leaves after all of the term's payments; not below 0.
+
+        The balloon of a note that fixes principal, rate, term and payment.
+        """
+        with localcontext(PRECISION):
+            growth = self._growth(rate, 0)
+            left = balance * growth.balance - payment * growth.payments
+        minor_unit = 10 ** (self.steps.terms.digits - self.steps.terms.currency_digits)
+        return max(0, round_payment(left, PaymentRounding.NEAREST, minor_unit))
+
+    def _growth(self, rate: Decimal, paid: int) -> Growth:
+        """From the payment numbered `paid` (or the last interest-only one) to the last that sizes."""
+        steps, terms = self.steps, self.steps.terms
+        done = max(paid, terms.interest_only)
+        annual = Fraction(rate)
+        # In advance payment k is made at the start of period k: it has the factor of period k - 1.
+        start = done - 1 if terms.in_advance else done
+        end = self._sized_to() - 1 if terms.in_advance else self._sized_to()
+        growth = _NOTHING
+        if start < 0:
+            growth, start = _PAYMENT_AT_ONCE, 0
+        if terms.payment_basis is PaymentBasis.EQUAL_PERIODS:
+            return growth.then(equal_periods(annual / terms.frequency.per_year, end - start))
+        if start == 0 and self._first_is_odd():
+            growth, start = one_period(steps.first[0].factor(rate)), 1
+        return growth.then(dated_periods(steps.numerators[start:end], steps.denominator, annual))
+
+    def _first_is_odd(self) -> bool:
+        """Whether the first payment is sized on an odd first period, and not as if it were regular."""
+        return len(self.steps.first) == 1

@@ -1,0 +1,160 @@
+"""Walks a loan from funding to its last row: what happens on which day, in the order of the contract.
+
+On one date: rate change, draw, capitalized odd days, scheduled payment, extra payment. Runs of plain
+periods go through the kernel in one step; a period in which anything happens is taken apart.
+"""
+
+import datetime as dt
+from collections.abc import Iterator
+
+from tenorbook.basis.conventions import PaymentChange, RowKind
+from tenorbook.basis.money import to_text
+from tenorbook.basis.problem import NOWHERE, TermsError, error
+from tenorbook.schedule.due import interest_due, split
+from tenorbook.schedule.extras import extras_between_due_dates, extras_on_due_date
+from tenorbook.schedule.first_period import (
+    capitalization_day,
+    capitalize_on,
+    drop_settled_odd_days,
+    paid_at_funding,
+)
+from tenorbook.schedule.ledger import Schedule
+from tenorbook.schedule.plain import take_plain_run
+from tenorbook.schedule.resizing import settle_pending, size_at_funding
+from tenorbook.schedule.state import State
+from tenorbook.schedule.steps import Span, Steps
+
+
+def walk(steps: Steps) -> Schedule:
+    """The schedule of a loan.
+
+    Raises:
+        TermsError: the fixed payment never repays the loan.
+    """
+    state = State.before_funding(steps)
+    _fund(state)
+    while not state.over:
+        if not take_plain_run(state):
+            _period(state, state.at + 1)
+    _report_unused(state)
+    return state.columns.schedule(state.terms)
+
+
+def _fund(state: State) -> None:
+    """The funding date, with everything that falls on it."""
+    terms = state.terms
+    interest, parts = paid_at_funding(state)
+    state.add_row(RowKind.FUNDING, terms.funding, interest=interest, draw=terms.principal, parts=parts)
+    size_at_funding(state)
+    _reprice_until(state, terms.funding)
+    if terms.in_advance:
+        _scheduled_payment(state, terms.funding, 0)
+    else:
+        extras_between_due_dates(state, terms.funding)
+    settle_pending(state)
+
+
+def _period(state: State, number: int) -> None:
+    """One period, event by event, and what its end brings."""
+    end, spans = state.steps.boundaries[number], state.steps.spans(number)
+    state.accrual.start_period()
+    for day in _days_before(state, end):
+        _accrue(state, spans, day)
+        _reprice_until(state, day)
+        capitalize_on(state, day)
+        extras_between_due_dates(state, day)
+        if state.over:
+            return
+    _accrue(state, spans, end)
+    _reprice_until(state, end)
+    _boundary(state, number, end)
+    state.at = number
+    settle_pending(state)
+
+
+def _days_before(state: State, end: dt.date) -> Iterator[dt.date]:
+    """The days inside the running period on which something happens, in order."""
+    while True:
+        days = [day for day in (state.next_event(), capitalization_day(state)) if day is not None]
+        day = min(days, default=end)
+        if day >= end:
+            return
+        yield day
+
+
+def _accrue(state: State, spans: tuple[Span, ...], day: dt.date) -> None:
+    row = len(state.columns.date) - 1
+    state.accrual.run_to(spans, day, state.balance, row, state.rate)
+    state.rate_before = state.rate
+    drop_settled_odd_days(state)
+
+
+def _reprice_until(state: State, day: dt.date) -> None:
+    """Rate changes up to a day; their row still shows the rate of the days before it."""
+    while state.repricings and state.repricings[-1].date <= day:
+        change = state.repricings.pop()
+        state.add_row(RowKind.RATE, change.date)
+        state.rate = change.rate
+        if isinstance(change.payment, int):
+            state.pending = change.payment
+        elif change.payment is PaymentChange.REAMORTIZE:
+            state.pending = f"re-amortized after the rate change of {change.date}"
+
+
+def _boundary(state: State, number: int, day: dt.date) -> None:
+    """The end of a period: a payment, the balloon, or nothing where all is paid at maturity."""
+    at_end = number == state.steps.last
+    if state.terms.one_payment and not at_end:
+        extras_between_due_dates(state, day)
+    elif state.terms.in_advance and at_end:
+        _balloon(state, day)
+    else:
+        _scheduled_payment(state, day, number)
+        if not state.over and at_end:
+            raise _never_repaid(state)
+
+
+def _scheduled_payment(state: State, day: dt.date, boundary: int) -> None:
+    """A scheduled payment, and the extra payments made with it."""
+    due, parts = interest_due(state, boundary + 1)
+    interest, principal = split(state, due)
+    extra = extras_on_due_date(state, day, state.balance - principal)
+    state.add_row(RowKind.PAYMENT, day, interest=interest, principal=principal, extra=extra, parts=parts)
+    state.paid += 1
+    state.accrual.clear()
+    state.end_if_repaid()
+
+
+def _balloon(state: State, day: dt.date) -> None:
+    """What is left, one period after the last payment in advance."""
+    interest, parts = state.owed_interest()
+    state.add_row(RowKind.BALLOON, day, interest=interest, principal=state.balance, parts=parts)
+    state.over = True
+
+
+def _never_repaid(state: State) -> TermsError:
+    """The end of the calendar is reached with money still owed."""
+    terms = state.terms
+    left = to_text(state.balance, terms.digits)
+    rate = terms.loan.place("Annual rate")
+    return TermsError(
+        error(
+            terms.loan_id,
+            terms.loan.place("Payment"),
+            f"the payment of {to_text(state.instalment, terms.digits)} does not repay the loan: after "
+            f"{state.paid:,} payments {left} is still owed",
+            "give a higher payment, or the Term or Maturity at which the rest falls due",
+            *((rate,) if rate != NOWHERE else ()),
+        )
+    )
+
+
+def _report_unused(state: State) -> None:
+    """One-off extras and rate changes that the loan never came to."""
+    end = state.columns.date[-1]
+    unused = [
+        *((extra.place, f"the extra payment of {extra.date}") for extra in state.extras if not extra.repeats),
+        *((change.place, f"the rate change of {change.date}") for change in state.repricings),
+    ]
+    for place, what in reversed(unused):
+        state.warn(place, f"{what} is not used: the loan is repaid on {end}", "check the date")

@@ -1,0 +1,1 @@
+"""The note as entered and as resolved: events, defaults, contradictions."""

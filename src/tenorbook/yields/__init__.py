@@ -1,0 +1,1 @@
+"""Rates that are derived from a loan, one published definition a file."""
