@@ -77,11 +77,33 @@ class Accrual:
         """Forgets how far the stretches of the last period had accrued."""
         self.progress = {}
 
-    def against(self, prepaid: tuple[Part, ...]) -> tuple[Part, ...]:
-        """The stretches that ran, and those prepaid for them taken back: items of their own."""
-        ran = [part._replace(item=Item.AS_RUN) for part in self.parts]
-        taken_back = [part._replace(item=Item.TAKEN_BACK, sign=-1) for part in prepaid]
-        return (*ran, *taken_back)
+    def prepay(self, spans: Iterable[Span], balance: int, balance_row: int, rate: Decimal) -> "Accrual":
+        """The interest of whole stretches still to run, as an accrual of its own; `settle` takes it off."""
+        ahead = Accrual(self.steps, self.rounding)
+        for span in spans:
+            ahead.run_to((span,), span.end, balance, balance_row, rate)
+        return ahead
+
+    def add(self, other: "Accrual") -> None:
+        """Interest of another accrual that is posted together with this one."""
+        for item, amount in other.amounts.items():
+            self.amounts[item] = self.amounts.get(item, ZERO) + amount
+        self.parts += other.parts
+
+    def settle(self, prepaid: "Accrual") -> None:
+        """Takes off what was paid in advance; only an event inside the period then leaves a difference."""
+        for item, amount in prepaid.amounts.items():
+            self.amounts[item] = self.amounts.get(item, ZERO) - amount
+        self.parts += [part._replace(sign=-part.sign) for part in prepaid.parts]
+
+    @property
+    def open(self) -> bool:
+        """Whether any interest is accrued, or was paid in advance."""
+        return any(self.amounts.values())
+
+    def posted_parts(self) -> tuple[Part, ...]:
+        """The stretches behind the interest; an item that comes to nothing has none."""
+        return tuple(part for part in self.parts if self.amounts.get(part.item))
 
     def rounded(self, item: Item) -> int:
         """What an item would be if it were posted now."""
@@ -91,17 +113,23 @@ class Accrual:
         """All items as if posted now, each rounded by itself."""
         return sum(self.rounded(item) for item in self.amounts)
 
-    def pay(self, amount: int) -> None:
-        """Takes off interest that is paid before it is due, the odd days first."""
-        for item in sorted(self.amounts, key=lambda item: item is not Item.ODD_DAYS):
-            paid = min(amount, max(0, self.rounded(item)))
-            self.amounts[item] -= paid
-            amount -= paid
-        if amount:
-            self.amounts[Item.PERIOD] = self.amounts.get(Item.PERIOD, ZERO) + -amount
+    def pay(self, amount: int) -> bool:
+        """Takes off interest paid between due dates; True if that posts all of it and accrual starts anew.
+
+        What is posted in full starts anew at nothing, so that its rounding stays where it was posted;
+        a part payment leaves the exact rest, the odd days first.
+        """
+        if amount == self.due():
+            self.clear()
+            return True
+        odd = min(amount, max(0, self.rounded(Item.ODD_DAYS)))
+        for item, paid in ((Item.ODD_DAYS, odd), (Item.PERIOD, amount - odd)):
+            if paid:
+                self.amounts[item] = self.amounts.get(item, ZERO) - paid
+        return False
 
     def drop(self, item: Item) -> None:
-        """Forgets an item that is posted elsewhere, or never."""
+        """Forgets an item that is never charged."""
         self.amounts.pop(item, None)
         self.parts = [part for part in self.parts if part.item is not item]
 

@@ -27,10 +27,24 @@ def accrued_interest(schedule: Schedule, until: date) -> int:
     period = bisect_left(steps.boundaries, until)
     accrual = Accrual(steps, schedule.terms.interest_rounding)
     first = 1 if schedule.terms.one_payment else period
+    _take_off_prepaid(schedule, steps, accrual, first)
     row = bisect_right(schedule.date, steps.boundaries[first - 1]) - 1
     for number in range(first, period + 1):
         row = _run_period(schedule, steps, accrual, number, row, until)
-    return accrual.due() + schedule.carried.get(row, 0) - _prepaid(schedule, steps, period)
+    return accrual.due() + schedule.carried.get(row, 0)
+
+
+def _take_off_prepaid(schedule: Schedule, steps: Steps, accrual: Accrual, period: int) -> None:
+    """Settles what was paid in advance for a period: with its first payment, or at funding."""
+    terms, start = schedule.terms, steps.boundaries[period - 1]
+    row = bisect_left(schedule.date, start)
+    while row < len(schedule) and schedule.date[row] == start:
+        if schedule.prepays(row):
+            spans = steps.spans(period)
+            accrual.settle(accrual.prepay(spans, schedule.opening[row], row, rate_on(terms, start)))
+        row += 1
+    if period == 1 and terms.first_period is FirstPeriod.PAY_AT_FUNDING and steps.first:
+        accrual.settle(accrual.prepay(steps.first[:1], terms.principal, 0, terms.rate))
 
 
 def _run_period(
@@ -49,7 +63,7 @@ def _run_period(
         elif schedule.interest[row]:
             accrual.pay(schedule.interest[row])
     accrual.run_to(spans, end, schedule.closing[row], row, rate_on(terms, schedule.date[row]))
-    if terms.first_period in (FirstPeriod.WAIVE, FirstPeriod.PAY_AT_FUNDING):
+    if terms.first_period is FirstPeriod.WAIVE:
         accrual.drop(Item.ODD_DAYS)
     return row
 
@@ -61,19 +75,3 @@ def rate_on(terms: Terms, day: date) -> Decimal:
         if change.date <= day:
             rate = change.rate
     return rate
-
-
-def _prepaid(schedule: Schedule, steps: Steps, period: int) -> int:
-    """Interest that was paid in advance for a period; 0 for loans that do not prepay."""
-    if not schedule.terms.prepays:
-        return 0
-    start = steps.boundaries[period - 1]
-    row = next(
-        row
-        for row in range(bisect_left(schedule.date, start), len(schedule))
-        if schedule.kind[row] is RowKind.PAYMENT
-    )
-    prepaid = Accrual(steps, schedule.terms.interest_rounding)
-    spans = steps.spans(period)
-    prepaid.run_to(spans, spans[-1].end, schedule.opening[row], row, rate_on(schedule.terms, start))
-    return prepaid.due()

@@ -1,83 +1,133 @@
-"""A scheduled payment: how much of it is interest and how much principal."""
+"""A scheduled payment: what falls due, and how much of it is interest and how much principal."""
 
-from tenorbook.schedule.ledger import Item, Part
+import datetime as dt
+
+from tenorbook.basis.conventions import RowKind
+from tenorbook.schedule.accrual import Accrual
+from tenorbook.schedule.extras import extras_on_due_date
+from tenorbook.schedule.ledger import Item
 from tenorbook.schedule.state import State
 
 
-def interest_due(state: State, period_ahead: int) -> tuple[int, tuple[Part, ...]]:
-    """Interest to post with the payment now due, and the stretches it comes from.
+def scheduled_payment(state: State, day: dt.date, period_ahead: int) -> None:
+    """A scheduled payment, and the extra payments made with it, in one row.
 
     Args:
-        state: of the loan, accrued up to today.
-        period_ahead: the period that starts today, whose interest a prepaid loan pays.
+        state: of the loan, accrued up to the day.
+        day: the due date.
+        period_ahead: the period that starts on the day.
     """
-    return _prepay(state, period_ahead) if state.terms.prepays else state.owed_interest()
-
-
-def _prepay(state: State, period: int) -> tuple[int, tuple[Part, ...]]:
-    """Interest in advance for a period, and the correction of the period that ends today."""
-    correction, parts = state.prepaid_correction()
+    ahead = _interest_ahead(state, period_ahead)
+    if ahead is not None:
+        state.accrual.add(ahead)
+    interest, principal = _split(state, state.owed_interest())
+    extra = extras_on_due_date(state, day, state.balance - principal)
+    if ahead is not None and principal + extra == state.balance:
+        state.accrual.settle(ahead)  # repaid today: there is no period to come
+        interest, ahead = state.owed_interest(), None
+    parts = state.accrual.posted_parts()
+    state.add_row(RowKind.PAYMENT, day, interest=interest, principal=principal, extra=extra, parts=parts)
+    state.paid += 1
     state.accrual.clear()
-    spans, row = state.steps.spans(period), len(state.columns.date) - 1
-    state.accrual.start_period()
-    state.accrual.run_to(spans, spans[-1].end, state.balance, row, state.rate)
-    state.prepaid, state.prepaid_parts = state.accrual.due(), tuple(state.accrual.parts)
-    return state.prepaid + correction, (*state.prepaid_parts, *parts)
+    if ahead is not None:
+        state.accrual.settle(ahead)
+    state.end_if_repaid()
 
 
-def split(state: State, due: int) -> tuple[int, int]:
+def _interest_ahead(state: State, period: int) -> Accrual | None:
+    """The interest of the period that starts now, where the payment prepays it."""
+    if not state.prepays(state.paid + 1):
+        return None
+    row = len(state.columns.date) - 1
+    return state.accrual.prepay(state.steps.spans(period), state.balance, row, state.rate)
+
+
+def balloon_payment(state: State, day: dt.date) -> None:
+    """What is left, one period after the last payment in advance."""
+    state.add_row(
+        RowKind.BALLOON,
+        day,
+        interest=state.owed_interest(),
+        principal=state.balance,
+        parts=state.accrual.posted_parts(),
+    )
+    state.over = True
+
+
+def _split(state: State, interest: int) -> tuple[int, int]:
     """Interest and principal of the payment now due.
 
     Args:
-        state: of the loan; unpaid interest it carries is updated.
-        due: interest due, carried interest included.
+        state: of the loan; what is paid ahead or carried unpaid is updated.
+        interest: due, carried interest included.
     """
-    if is_last(state):
-        state.carried = 0
-        return due, state.balance
-    if not state.amortizing(state.paid + 1):
-        return due, 0
-    interest, principal = _level_split(state, due) if state.pays_level() else (due, state.instalment)
-    used = min(state.ahead, max(0, principal))
-    state.ahead -= used
-    return interest, _bounded(state, principal - used)
-
-
-def _level_split(state: State, due: int) -> tuple[int, int]:
-    """A level payment: interest first. Odd-day interest is paid on top of it."""
-    payment = state.instalment + state.accrual.rounded(Item.ODD_DAYS)
-    principal = payment - due
+    owed = state.balance + interest
+    due, used = _falls_due(state, interest, owed), 0
+    if due < owed:
+        used = min(state.ahead, max(0, due))
+        state.ahead -= used
+    principal = due - used - interest
     if principal >= 0 or not state.carries_interest():
         state.carried = 0
-        return due, principal
-    state.carried = due - payment
-    return payment, 0
+        return interest, principal
+    state.carried = -principal
+    return due - used, 0
 
 
-def _bounded(state: State, principal: int) -> int:
-    """No more than is left; the last payment in advance leaves exactly the stated balloon."""
-    terms = state.terms
-    if terms.in_advance and state.paid + 1 == terms.count:
-        target = _left_in_advance(state)
-        if target is not None:
-            rest = max(0, state.balance - target)
-            return min(principal, rest) if state.reduced and rest < principal else rest
-    return min(principal, state.balance)
+def _falls_due(state: State, interest: int, owed: int) -> int:
+    """The payment now due, before anything paid ahead is taken off; at most what is owed."""
+    regular = min(_regular(state, interest), owed)
+    if not is_last(state) and not _reaches_end(state, owed - regular):
+        return regular
+    state.left_at_end = owed - regular
+    if not state.terms.in_advance:
+        return owed
+    due = _last_in_advance(state, regular, owed)
+    state.balloon_next = due < owed
+    return due
 
 
-def _left_in_advance(state: State) -> int | None:
-    """The balloon the last payment in advance must leave; `None`: whatever it comes to."""
-    terms = state.terms
-    if terms.amortized_over or (terms.payment is not None and terms.balloon is None):
-        return None
-    return terms.balloon or 0
+def _regular(state: State, interest: int) -> int:
+    """The scheduled payment by its shape. Odd-day interest is paid on top of a level payment."""
+    if not state.amortizing(state.paid + 1):
+        return interest
+    if state.pays_level():
+        return state.instalment + state.accrual.rounded(Item.ODD_DAYS)
+    return state.instalment + interest
 
 
 def is_last(state: State) -> bool:
-    """Whether the payment now due is the one that repays the rest."""
+    """Whether the payment now due is the last of the contract."""
     terms = state.terms
-    if terms.in_advance:
-        return False
     if terms.one_payment:
         return state.at + 1 == state.steps.last
-    return state.paid + 1 == terms.count
+    if terms.count is None and not state.resized:
+        return False
+    return state.paid + 1 == state.plan.count
+
+
+def _reaches_end(state: State, left: int) -> bool:
+    """Whether a loan whose payment decides its term has come down to its balloon, or to nothing."""
+    open_ended = state.terms.count is None and not state.resized
+    return open_ended and left <= (state.terms.balloon or 0)
+
+
+def _last_in_advance(state: State, regular: int, owed: int) -> int:
+    """The last payment in advance: it leaves the balloon, due one period later, and takes the rest.
+
+    Where the note's own payment or an extra decides what is left, that is the balloon.
+    """
+    if not state.amortizing(state.paid + 1):
+        return regular
+    terms, left, balloon = state.terms, owed - regular, state.plan.balloon
+    given = terms.payment is not None and not state.resized
+    open_ended = terms.count is None and not state.resized
+    if open_ended:
+        return owed - balloon
+    if terms.amortized_over or (given and (terms.balloon or left > regular)):
+        return regular
+    if not balloon:
+        return owed
+    if state.reduced or given or state.balance < balloon:
+        return regular
+    return owed - balloon

@@ -1,4 +1,4 @@
-"""Extra payments: on a due date with the scheduled payment, or in between as rows of their own."""
+"""Extra payments: on a due date with the scheduled payment, or in between in a row of their own."""
 
 import datetime as dt
 
@@ -9,38 +9,58 @@ from tenorbook.terms.terms import Extra
 
 
 def extras_between_due_dates(state: State, day: dt.date) -> None:
-    """Extra payments up to a day, each a row; interest has accrued to that day."""
-    while state.extras and state.extras[-1].date <= day and not state.over:
-        _extra_row(state, state.extras.pop())
+    """The extra payments of a day, all in one row; interest has accrued to that day."""
+    interest, principal, parts = 0, 0, state.accrual.posted_parts()
+    paid_before = tuple(state.accrual.paid_rows)
+    row, extras = len(state.columns.date), _take(state, day)
+    for extra in extras:
+        balance = state.balance - principal
+        taken = _interest_first(state, extra, balance)
+        used = min(extra.amount - taken, balance)
+        interest, principal = interest + taken, principal + used
+        _take_interest(state, taken, row)
+        _note_cut(state, extra, taken + used)
+        _apply_effect(state, extra.effect, extra.date, taken + used)
+    if interest or principal:
+        state.add_row(
+            RowKind.EXTRA,
+            day,
+            interest=interest,
+            extra=principal,
+            parts=parts if interest else (),
+            paid_before=paid_before,
+        )
+        state.end_if_repaid()
 
 
-def _extra_row(state: State, extra: Extra) -> None:
-    owed, parts = state.owed_interest()
-    interest = 0
-    if extra.amount >= state.balance:  # a payoff: the interest accrued to its date comes first
-        interest = min(owed, extra.amount)
-    elif extra.applies_to is AppliesTo.INTEREST_FIRST:
-        interest = max(0, min(owed, extra.amount))
-    principal = min(extra.amount - interest, state.balance)
-    state.add_row(
-        RowKind.EXTRA,
-        extra.date,
-        interest=interest,
-        extra=principal,
-        parts=parts if interest else (),
-    )
-    if interest:
-        _take_interest(state, interest)
-    _note_cut(state, extra, interest + principal)
-    _apply_effect(state, extra.effect, extra.date, principal)
-    state.end_if_repaid()
+def _take(state: State, day: dt.date) -> list[Extra]:
+    """The extra payments up to a day, taken off the list of those to come."""
+    taken = []
+    while state.extras and state.extras[-1].date <= day:
+        taken.append(state.extras.pop())
+    return taken
 
 
-def _take_interest(state: State, interest: int) -> None:
-    carried = min(state.carried, interest)
+def _interest_first(state: State, extra: Extra, balance: int) -> int:
+    """The part of an extra payment that pays interest."""
+    if not balance:
+        return 0
+    owed = state.owed_interest()
+    if extra.amount >= max(balance, balance + owed):  # a payoff; interest paid in advance comes back
+        return owed
+    if extra.applies_to is AppliesTo.INTEREST_FIRST or extra.amount >= balance:
+        return max(0, min(owed, extra.amount))
+    return 0
+
+
+def _take_interest(state: State, interest: int, row: int) -> None:
+    """Takes interest off what is owed; a row that pays only part of it is remembered."""
+    if not interest:
+        return
+    carried = min(state.carried, max(0, interest))
     state.carried -= carried
-    state.accrual.pay(interest - carried)
-    state.accrual.paid_rows.append(len(state.columns.date) - 1)
+    if not state.accrual.pay(interest - carried):
+        state.accrual.paid_rows.append(row)
 
 
 def extras_on_due_date(state: State, day: dt.date, balance: int) -> int:
@@ -49,8 +69,7 @@ def extras_on_due_date(state: State, day: dt.date, balance: int) -> int:
     if terms.each_payment and terms.each_from <= day <= terms.each_until:
         total = min(terms.each_payment, balance)
         state.reduced = True
-    while state.extras and state.extras[-1].date <= day:
-        extra = state.extras.pop()
+    for extra in _take(state, day):
         used = min(extra.amount, balance - total)
         total += used
         _note_cut(state, extra, used)
@@ -58,12 +77,12 @@ def extras_on_due_date(state: State, day: dt.date, balance: int) -> int:
     return total
 
 
-def _apply_effect(state: State, effect: ExtraEffect, day: dt.date, principal: int) -> None:
+def _apply_effect(state: State, effect: ExtraEffect, day: dt.date, amount: int) -> None:
     match effect:
         case ExtraEffect.LOWER:
             state.pending = f"re-amortized after the extra payment of {day}"
         case ExtraEffect.PAY_AHEAD:
-            state.ahead += principal
+            state.ahead += amount
         case ExtraEffect.SHORTEN:
             state.reduced = True
 

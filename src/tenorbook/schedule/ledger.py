@@ -12,7 +12,7 @@ from fractions import Fraction
 from functools import cached_property
 from typing import NamedTuple
 
-from tenorbook.basis.conventions import RowKind
+from tenorbook.basis.conventions import Repayment, RowKind
 from tenorbook.basis.problem import Problem
 from tenorbook.terms.terms import Terms
 
@@ -24,10 +24,6 @@ class Item(StrEnum):
     """Interest of the regular run of the loan."""
     ODD_DAYS = "odd days"
     """Odd-day interest of the first period, where the loan treats it apart."""
-    AS_RUN = "as run"
-    """What a prepaid period really ran to, where something happened inside it."""
-    TAKEN_BACK = "taken back"
-    """The interest that had been prepaid for such a period."""
 
 
 class Part(NamedTuple):
@@ -41,7 +37,8 @@ class Part(NamedTuple):
         fraction: of a year, by the loan's day count for this stretch.
         factor: rate x fraction, except where whole periods of a long first period compound.
         item: the item of interest it is part of.
-        sign: 1, or -1 for a short first period's odd days and for prepaid interest taken back.
+        sign: 1, or -1 for a short first period's odd days, and for what was prepaid of a period whose
+            balance or rate then changed.
         compounds: whole periods that compound within `factor`; 0 where factor = rate x fraction.
     """
 
@@ -163,6 +160,13 @@ class Schedule:
         )  # fmt: skip
         for number, values in enumerate(zip(*columns, strict=True)):
             yield Row(number, *values)
+
+    def prepays(self, row: int) -> bool:
+        """Whether a row is a payment in advance of the interest of the period it starts."""
+        if not self.terms.in_advance or self.kind[row] is not RowKind.PAYMENT:
+            return False
+        number = sum(kind is RowKind.PAYMENT for kind in self.kind[: row + 1])
+        return self.terms.repayment is Repayment.INTEREST_ONLY or number <= self.terms.interest_only
 
     def parts(self, row: int) -> tuple[Part, ...]:
         """The stretches of accrual that the interest of a row was computed from; empty if none was due."""

@@ -49,20 +49,26 @@ def _run(state: State, numerators: list[int]) -> tuple[list[int], list[int]]:
 
 def _usable(state: State, interest: list[int], closings: list[int]) -> int:
     """How many periods of a run are plain after all: a balance is left, and the interest is covered."""
-    count = len(closings)
-    if closings[-1] <= 0:
-        count = next(number for number, closing in enumerate(closings) if closing <= 0)
+    count, floor = len(closings), _floor(state)
+    if closings[-1] <= floor:
+        count = next(number for number, closing in enumerate(closings) if closing <= floor)
     if state.pays_level() and state.carries_interest():
         uncovered = (number for number, due in enumerate(interest) if due > state.instalment)
         count = min(count, next(uncovered, count))
     return count
 
 
+def _floor(state: State) -> int:
+    """The balance at which a run ends: nothing, or the balloon of a loan whose payment decides its term."""
+    return (state.terms.balloon or 0) if state.terms.count is None else 0
+
+
 def _last_plain(state: State) -> int:
     """The last boundary up to which every period is plain; the present one if there is none."""
     if _special(state):
         return state.at
-    terms, last = state.terms, state.steps.last - 1
+    terms = state.terms
+    last = min(state.steps.last, state.plan.count or state.steps.last) - 1
     if state.paid < terms.interest_only:
         last = min(last, state.at + terms.interest_only - state.paid)
     elif terms.in_advance:
@@ -75,9 +81,9 @@ def _special(state: State) -> bool:
     """Whether the present state or the terms ask for each period to be taken apart."""
     terms = state.terms
     odd_first = state.at == 0 and bool(state.steps.first)
-    unsettled = state.ahead or state.carried or state.accrual.amounts or state.pending is not None
-    by_hand = terms.one_payment or state.terms.prepays or terms.each_payment
-    return bool(odd_first or unsettled or by_hand)
+    unsettled = state.ahead or state.carried or state.accrual.open or state.pending is not None
+    by_hand = terms.one_payment or state.prepays(state.paid + 1) or terms.each_payment
+    return bool(odd_first or unsettled or by_hand or state.balloon_next)
 
 
 def _last_before(state: State, last: int, day: dt.date) -> int:

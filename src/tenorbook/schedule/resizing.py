@@ -14,36 +14,32 @@ def size_at_funding(state: State) -> None:
         state.set_instalment(terms.payment, "given by the note")
     elif terms.repayment in _SIZED:
         balance = state.balance + still_to_capitalize(state)
-        amount = state.sizer.amount(balance, terms.balloon or 0, state.rate, 0)
+        amount = state.sizer.amount(balance, _balloon_to_leave(state), state.rate, 0)
         state.set_instalment(amount, "solved")
 
 
 def settle_pending(state: State) -> None:
-    """Sets or re-amortizes the payment, once the next payment is one that amortizes."""
+    """Sets or re-amortizes the payment after a due date, if an event asked for it."""
     if state.pending is None or state.over:
         return
+    pending, state.pending = state.pending, None
     if state.terms.repayment not in _SIZED:
-        state.pending = None
-    elif state.amortizing(state.paid + 1):
-        pending, state.pending = state.pending, None
-        if isinstance(pending, int):
-            state.set_instalment(pending, "set by the rate change")
-        else:
-            _reamortize(state, pending)
+        return
+    if isinstance(pending, int):
+        state.set_instalment(pending, "set by the rate change")
+    else:
+        _reamortize(state, pending)
 
 
-def _reamortize(state: State, why: str) -> None:
+def _reamortize(state: State, why: str | None) -> None:
     if state.sizer.remaining(state.paid) > 0:
         balance = state.balance + still_to_capitalize(state)
         left = min(_balloon_to_leave(state), balance)
-        state.set_instalment(state.sizer.amount(balance, left, state.rate, state.paid), why)
+        state.set_instalment(state.sizer.amount(balance, left, state.rate, state.paid), why or "re-amortized")
+        state.resized = True
 
 
 def _balloon_to_leave(state: State) -> int:
-    """What re-amortizing leaves to the end: the stated balloon, or what the note's payment leaves."""
+    """What sizing aims at: the plan's balloon; where more payments size it, only a stated one."""
     terms = state.terms
-    if terms.balloon is not None:
-        return terms.balloon
-    if terms.payment is not None and terms.repayment is Repayment.LEVEL_PAYMENT:
-        return state.sizer.left_after(terms.payment, terms.principal, terms.rate)
-    return 0
+    return (terms.balloon or 0) if terms.amortized_over else state.plan.balloon

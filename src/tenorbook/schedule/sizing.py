@@ -12,7 +12,7 @@ from decimal import Context, Decimal, localcontext
 from fractions import Fraction
 from typing import NamedTuple
 
-from tenorbook.basis.conventions import PaymentBasis, PaymentRounding, Repayment
+from tenorbook.basis.conventions import PaymentBasis, Repayment
 from tenorbook.basis.rounding import round_payment
 from tenorbook.schedule.steps import Steps
 
@@ -68,10 +68,24 @@ def dated_periods(numerators: Sequence[int], denominator: int, rate: Fraction) -
 
 
 @dataclass(frozen=True, slots=True)
+class Plan:
+    """What the contract comes to if nothing happens.
+
+    Attributes:
+        count: number of payments; `None` while a fixed payment is still to decide it.
+        balloon: principal to be left after the last of them, in the ledger's unit.
+    """
+
+    count: int | None
+    balloon: int
+
+
+@dataclass(frozen=True, slots=True)
 class Sizer:
     """Sizes the scheduled amount of one loan, at funding and whenever it is re-amortized."""
 
     steps: Steps
+    plan: Plan
 
     def remaining(self, paid: int) -> int:
         """Amortizing payments still to come after `paid` payments, by the number that sizes them."""
@@ -81,7 +95,7 @@ class Sizer:
     def _sized_to(self) -> int:
         terms = self.steps.terms
         over = terms.amortized_over
-        return terms.interest_only + over if over else self.steps.last
+        return terms.interest_only + over if over else self.plan.count or self.steps.last
 
     def amount(self, balance: int, balloon: int, rate: Decimal, paid: int) -> int:
         """The level payment, or with level principal the principal part, rounded as the loan says.
@@ -101,28 +115,19 @@ class Sizer:
                 exact = (balance * growth.balance - balloon) / growth.payments
         return round_payment(exact, terms.payment_rounding, terms.payment_step)
 
-    def left_after(self, payment: int, balance: int, rate: Decimal) -> int:
-        """What a given payment leaves after all of the term's payments; not below 0.
-
-        The balloon of a note that fixes principal, rate, term and payment.
-        """
-        with localcontext(PRECISION):
-            growth = self._growth(rate, 0)
-            left = balance * growth.balance - payment * growth.payments
-        minor_unit = 10 ** (self.steps.terms.digits - self.steps.terms.currency_digits)
-        return max(0, round_payment(left, PaymentRounding.NEAREST, minor_unit))
-
     def _growth(self, rate: Decimal, paid: int) -> Growth:
         """From the payment numbered `paid` (or the last interest-only one) to the last that sizes."""
         steps, terms = self.steps, self.steps.terms
-        done = max(paid, terms.interest_only)
-        annual = Fraction(rate)
-        # In advance payment k is made at the start of period k: it has the factor of period k - 1.
-        start = done - 1 if terms.in_advance else done
-        end = self._sized_to() - 1 if terms.in_advance else self._sized_to()
-        growth = _NOTHING
-        if start < 0:
-            growth, start = _PAYMENT_AT_ONCE, 0
+        start, end = max(paid, terms.interest_only), self._sized_to()
+        annual, growth = Fraction(rate), _NOTHING
+        if terms.in_advance:
+            # Payment k is made at the start of period k, so it has the factor of period k - 1; for the
+            # first one that amortizes no interest has run, or it was prepaid.
+            end -= 1
+            if start == terms.interest_only:
+                growth = _PAYMENT_AT_ONCE
+            else:
+                start -= 1
         if terms.payment_basis is PaymentBasis.EQUAL_PERIODS:
             return growth.then(equal_periods(annual / terms.frequency.per_year, end - start))
         if start == 0 and self._first_is_odd():

@@ -1,7 +1,7 @@
 """Where a loan stands while its schedule is being walked, and the rows written so far."""
 
 import datetime as dt
-from dataclasses import dataclass, field
+from dataclasses import dataclass
 from decimal import Decimal
 
 from tenorbook.basis.conventions import Repayment, RowKind, UnpaidInterest
@@ -9,7 +9,7 @@ from tenorbook.basis.problem import Place, note, warning
 from tenorbook.schedule.accrual import Accrual
 from tenorbook.schedule.columns import Columns
 from tenorbook.schedule.ledger import Instalment, Part
-from tenorbook.schedule.sizing import Sizer
+from tenorbook.schedule.sizing import Plan, Sizer
 from tenorbook.schedule.steps import Steps
 from tenorbook.terms.terms import Extra, Repricing, Terms
 
@@ -23,6 +23,7 @@ class State:
     Attributes:
         steps: dated steps.
         terms: resolved terms.
+        plan: number of payments and balloon that sizing aims at.
         sizer: sizes payments on the steps.
         columns: the rows so far.
         accrual: interest run and not posted.
@@ -36,15 +37,18 @@ class State:
         at: boundary reached.
         ahead: paid ahead, still to reduce instalments.
         carried: unpaid interest that bears none.
-        prepaid: interest paid in advance for the running period.
-        prepaid_parts: the stretches it was computed from.
         pending: a payment to set (int), or the reason to re-amortize (text); `None`: neither.
+        capitalized: whether the odd days have been added to principal.
+        resized: whether the payment has been re-amortized.
         reduced: whether an extra has put the balance below the contract's.
+        balloon_next: whether only the balloon is left (payments in advance).
+        left_at_end: principal that the regular payments did not reach.
         over: whether the last row is written.
     """
 
     steps: Steps
     terms: Terms
+    plan: Plan
     sizer: Sizer
     columns: Columns
     accrual: Accrual
@@ -58,20 +62,23 @@ class State:
     at: int = 0
     ahead: int = 0
     carried: int = 0
-    prepaid: int = 0
-    prepaid_parts: tuple[Part, ...] = field(default=())
     pending: int | str | None = None
+    capitalized: bool = False
+    resized: bool = False
     reduced: bool = False
+    balloon_next: bool = False
+    left_at_end: int = 0
     over: bool = False
 
     @classmethod
-    def before_funding(cls, steps: Steps) -> "State":
+    def before_funding(cls, steps: Steps, plan: Plan) -> "State":
         """Nothing has happened yet."""
         terms = steps.terms
         return cls(
             steps=steps,
             terms=terms,
-            sizer=Sizer(steps),
+            plan=plan,
+            sizer=Sizer(steps, plan),
             columns=Columns(),
             accrual=Accrual(steps, terms.interest_rounding),
             rate=terms.rate,
@@ -90,8 +97,14 @@ class State:
         extra: int = 0,
         draw: int = 0,
         parts: tuple[Part, ...] = (),
+        paid_before: tuple[int, ...] | None = None,
     ) -> None:
-        """Writes a row and moves the balance; see `Columns.add`."""
+        """Writes a row and moves the balance; see `Columns.add`.
+
+        By default interest was paid before in the rows that the accrual remembers.
+        """
+        if paid_before is None:
+            paid_before = tuple(self.accrual.paid_rows)
         self.balance = self.columns.add(
             kind,
             day,
@@ -102,7 +115,7 @@ class State:
             extra=extra,
             draw=draw,
             parts=parts,
-            paid_before=tuple(self.accrual.paid_rows) if parts else (),
+            paid_before=paid_before if parts else (),
         )
         if self.carried:
             self.columns.carried[len(self.columns.date) - 1] = self.carried
@@ -133,18 +146,13 @@ class State:
         """Whether interest that a payment does not cover is kept apart, without interest."""
         return self.terms.unpaid_interest is UnpaidInterest.CARRY
 
-    def owed_interest(self) -> tuple[int, tuple[Part, ...]]:
-        """Interest accrued and unpaid, as if posted now, and its stretches; negative if prepaid."""
-        if self.terms.prepays:
-            return self.prepaid_correction()
-        return self.accrual.due() + self.carried, tuple(self.accrual.parts)
+    def owed_interest(self) -> int:
+        """Interest accrued and unpaid, as if posted now; negative where more was paid in advance."""
+        return self.accrual.due() + self.carried
 
-    def prepaid_correction(self) -> tuple[int, tuple[Part, ...]]:
-        """What the running period ran to, less what was prepaid for it; nothing if they agree."""
-        correction = self.accrual.due() - self.prepaid
-        if not correction:
-            return 0, ()
-        return correction, self.accrual.against(self.prepaid_parts)
+    def prepays(self, payment: int) -> bool:
+        """Whether payment number `payment` is the interest of the period that it starts."""
+        return self.terms.in_advance and not self.amortizing(payment)
 
     def note(self, place: Place, text: str) -> None:
         """Something to know, at a cell."""

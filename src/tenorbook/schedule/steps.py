@@ -5,14 +5,14 @@ made there; in advance boundary k is due date k+1, and payment k+1 is made there
 funding date. Only period 1 of a loan in arrears can be odd.
 """
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from datetime import date
 from decimal import Decimal
 from fractions import Fraction
-from functools import cached_property
 
 from tenorbook.basis.conventions import DayCount, FirstPeriod, Frequency, LongFirst
 from tenorbook.calendar.day_count import regular_fractions, year_fraction
+from tenorbook.calendar.due_dates import DueDates
 from tenorbook.schedule.ledger import Item
 from tenorbook.terms.dating import MOST_PAYMENTS, MOST_YEARS
 from tenorbook.terms.terms import Terms
@@ -31,6 +31,8 @@ class Span:
         sign: -1 where the interest is taken off.
         compounding: the year fractions of whole periods that compound; empty for simple interest.
         odd: the simple rest of a compounding stretch.
+        apart: year fraction of the regular period that compounds with the stretch, but whose own
+            interest is another item.
     """
 
     start: date
@@ -40,6 +42,7 @@ class Span:
     sign: int = 1
     compounding: tuple[Fraction, ...] = ()
     odd: Fraction = Fraction(0)
+    apart: Fraction = Fraction(0)
 
     def factor(self, rate: Decimal) -> Fraction:
         """Interest on 1 over the whole stretch: (1+i)^k (1+odd) - 1 where whole periods compound."""
@@ -49,7 +52,7 @@ class Span:
         growth = 1 + annual * self.odd
         for fraction in self.compounding:
             growth *= 1 + annual * fraction
-        return growth - 1
+        return growth - 1 - annual * self.apart
 
 
 @dataclass(frozen=True)
@@ -65,6 +68,8 @@ class Steps:
         denominator: common to all periods.
         last: number of the last boundary of the loan.
         first: the stretches of period 1; empty when it is regular.
+        maturity: the contract's last date, where 30E/360 ISDA leaves the end of February as it is;
+            `None` while a fixed payment is still to decide it.
     """
 
     terms: Terms
@@ -73,6 +78,7 @@ class Steps:
     denominator: int
     last: int
     first: tuple[Span, ...]
+    maturity: date | None
 
     def spans(self, period: int) -> tuple[Span, ...]:
         """The stretches of a period."""
@@ -107,11 +113,6 @@ class Steps:
             maturity=self.maturity,
         )
 
-    @cached_property
-    def maturity(self) -> date | None:
-        """The unrolled date of the last payment, where the terms state it."""
-        return self.terms.due[self.terms.count] if self.terms.count else None
-
     def factor(self, span: Span, day: date, rate: Decimal) -> Fraction:
         """Interest on 1 from the start of a stretch to `day`, at one rate throughout."""
         if day >= span.end:
@@ -133,12 +134,12 @@ def make_steps(terms: Terms, maturity: date | None = None) -> Steps:
     offset = 1 if terms.in_advance else 0
     due = terms.due.between(offset, offset + max(last, sized_to))
     if maturity is None and terms.count is not None:
-        maturity = due[terms.count - offset]
+        maturity = due[last if terms.leaves_balloon else terms.count - offset]
     numerators, denominator = regular_fractions(terms.day_count, due, terms.frequency, maturity)
     boundaries = due
     if due[0] != terms.funding:
         boundaries = [terms.funding, *due[1:]]
-    bare = Steps(terms, boundaries, numerators, denominator, last, ())
+    bare = Steps(terms, boundaries, numerators, denominator, last, (), maturity)
     return bare if boundaries is due else _with_odd_first_period(bare, due[0])
 
 
@@ -152,16 +153,23 @@ def _last_boundary(terms: Terms) -> int:
 
 def _single_step(terms: Terms) -> Steps:
     """One period from funding to maturity, counted by its dates."""
-    maturity = terms.due[1]
-    whole = year_fraction(
-        terms.day_count,
-        terms.funding,
-        maturity,
-        frequency=terms.frequency,
-        grid=terms.due,
-        maturity=maturity,
-    )
-    return Steps(terms, [terms.funding, maturity], [whole.numerator], whole.denominator, 1, ())
+    boundaries = [terms.funding, terms.due[1]]
+    bare = Steps(terms, boundaries, [], 1, 1, (), terms.due[1])
+    whole = _single_fraction(bare)
+    return replace(bare, numerators=[whole.numerator], denominator=whole.denominator)
+
+
+def _single_fraction(steps: Steps) -> Fraction:
+    """From funding to the only payment: by dates, except where the convention counts in periods."""
+    terms, (start, end) = steps.terms, steps.boundaries
+    if terms.day_count in (DayCount.EQUAL_PERIODS, DayCount.ACTUAL_ACTUAL_ICMA):
+        return _long_span(steps, 1).whole  # years counted back from maturity, then the odd days
+    if terms.day_count is DayCount.THIRTY_360:
+        months = DueDates.after(start, Frequency.MONTHLY)
+        number = months.number_on_or_before(end)
+        if months[number] == end:
+            return Fraction(30 * number, 360)
+    return steps.by_dates(terms.day_count, start, end, start, end)
 
 
 def _with_odd_first_period(steps: Steps, regular_start: date) -> Steps:
@@ -171,10 +179,25 @@ def _with_odd_first_period(steps: Steps, regular_start: date) -> Steps:
     if terms.first_period is FirstPeriod.ACCRUE:
         first: tuple[Span, ...] = (_short_span(steps) if short else _long_span(steps, 1),)
     else:
-        odd = _missing_days(steps, regular_start) if short else _long_span(steps, 0)
+        odd = _missing_days(steps, regular_start) if short else _odd_span(steps)
         regular = Span(regular_start, steps.boundaries[1], Fraction(steps.numerators[0], steps.denominator))
         first = (odd, regular)
-    return Steps(terms, steps.boundaries, steps.numerators, steps.denominator, steps.last, first)
+    return replace(steps, first=first)
+
+
+def _odd_span(steps: Steps) -> Span:
+    """From funding to one regular period before the first payment, an item of its own.
+
+    Added to the first payment it compounds through the regular period too, so that the two items
+    together come to what the long first period accrues.
+    """
+    span = _long_span(steps, 0)
+    if not span.compounding and steps.terms.long_first is not LongFirst.COMPOUND:
+        return span
+    if steps.terms.first_period is not FirstPeriod.ADD_TO_FIRST:
+        return span
+    regular = Fraction(steps.numerators[0], steps.denominator)
+    return replace(span, compounding=(*span.compounding, regular), apart=regular)
 
 
 def _short_span(steps: Steps) -> Span:

@@ -10,47 +10,54 @@ from collections.abc import Iterator
 from tenorbook.basis.conventions import PaymentChange, RowKind
 from tenorbook.basis.money import to_text
 from tenorbook.basis.problem import NOWHERE, TermsError, error
-from tenorbook.schedule.due import interest_due, split
-from tenorbook.schedule.extras import extras_between_due_dates, extras_on_due_date
+from tenorbook.schedule.due import balloon_payment, scheduled_payment
+from tenorbook.schedule.extras import extras_between_due_dates
 from tenorbook.schedule.first_period import (
     capitalization_day,
     capitalize_on,
-    drop_settled_odd_days,
-    paid_at_funding,
+    odd_days_at_funding,
+    waive_odd_days,
 )
-from tenorbook.schedule.ledger import Schedule
 from tenorbook.schedule.plain import take_plain_run
 from tenorbook.schedule.resizing import settle_pending, size_at_funding
+from tenorbook.schedule.sizing import Plan
 from tenorbook.schedule.state import State
 from tenorbook.schedule.steps import Span, Steps
 
 
-def walk(steps: Steps) -> Schedule:
-    """The schedule of a loan.
+def walk(steps: Steps, plan: Plan) -> State:
+    """The loan at its end, with all its rows.
+
+    Args:
+        steps: dated steps of the loan.
+        plan: number of payments and balloon that sizing aims at.
 
     Raises:
         TermsError: the fixed payment never repays the loan.
     """
-    state = State.before_funding(steps)
+    state = State.before_funding(steps, plan)
     _fund(state)
     while not state.over:
         if not take_plain_run(state):
             _period(state, state.at + 1)
     _report_unused(state)
-    return state.columns.schedule(state.terms)
+    return state
 
 
 def _fund(state: State) -> None:
     """The funding date, with everything that falls on it."""
-    terms = state.terms
-    interest, parts = paid_at_funding(state)
-    state.add_row(RowKind.FUNDING, terms.funding, interest=interest, draw=terms.principal, parts=parts)
+    day, prepaid = state.terms.funding, odd_days_at_funding(state)
+    interest, parts = (prepaid.due(), prepaid.posted_parts()) if prepaid else (0, ())
+    state.add_row(RowKind.FUNDING, day, interest=interest, draw=state.terms.principal, parts=parts)
+    if prepaid:
+        state.accrual.settle(prepaid)
     size_at_funding(state)
-    _reprice_until(state, terms.funding)
-    if terms.in_advance:
-        _scheduled_payment(state, terms.funding, 0)
+    _reprice_until(state, day)
+    settle_pending(state)
+    if state.terms.in_advance:
+        scheduled_payment(state, day, 1)
     else:
-        extras_between_due_dates(state, terms.funding)
+        extras_between_due_dates(state, day)
     settle_pending(state)
 
 
@@ -86,7 +93,7 @@ def _accrue(state: State, spans: tuple[Span, ...], day: dt.date) -> None:
     row = len(state.columns.date) - 1
     state.accrual.run_to(spans, day, state.balance, row, state.rate)
     state.rate_before = state.rate
-    drop_settled_odd_days(state)
+    waive_odd_days(state)
 
 
 def _reprice_until(state: State, day: dt.date) -> None:
@@ -104,32 +111,14 @@ def _reprice_until(state: State, day: dt.date) -> None:
 def _boundary(state: State, number: int, day: dt.date) -> None:
     """The end of a period: a payment, the balloon, or nothing where all is paid at maturity."""
     at_end = number == state.steps.last
-    if state.terms.one_payment and not at_end:
+    if state.balloon_next:
+        balloon_payment(state, day)
+    elif state.terms.one_payment and not at_end:
         extras_between_due_dates(state, day)
-    elif state.terms.in_advance and at_end:
-        _balloon(state, day)
     else:
-        _scheduled_payment(state, day, number)
-        if not state.over and at_end:
+        scheduled_payment(state, day, number + 1)
+        if at_end and not state.over:
             raise _never_repaid(state)
-
-
-def _scheduled_payment(state: State, day: dt.date, boundary: int) -> None:
-    """A scheduled payment, and the extra payments made with it."""
-    due, parts = interest_due(state, boundary + 1)
-    interest, principal = split(state, due)
-    extra = extras_on_due_date(state, day, state.balance - principal)
-    state.add_row(RowKind.PAYMENT, day, interest=interest, principal=principal, extra=extra, parts=parts)
-    state.paid += 1
-    state.accrual.clear()
-    state.end_if_repaid()
-
-
-def _balloon(state: State, day: dt.date) -> None:
-    """What is left, one period after the last payment in advance."""
-    interest, parts = state.owed_interest()
-    state.add_row(RowKind.BALLOON, day, interest=interest, principal=state.balance, parts=parts)
-    state.over = True
 
 
 def _never_repaid(state: State) -> TermsError:

@@ -44,8 +44,16 @@ class Ledger:
         if isinstance(value, Decimal) and not (value.is_finite() and abs(value) < LARGEST):
             findings.error_at(place, f"{value} is too large an amount", "correct the amount")
             return None
+        return self._in_unit(value, self.currency_digits, place, findings)
+
+    def step(self, value: Decimal, place: Place, findings: Findings) -> int | None:
+        """A rounding step in the ledger's unit; where interest is carried it may be as fine as that."""
+        return self._in_unit(value, self.digits, place, findings)
+
+    def _in_unit(self, value: Decimal, digits: int, place: Place, findings: Findings) -> int | None:
         try:
-            return to_minor(value, self.currency_digits) * self.minor_unit
+            scale: int = 10 ** (self.digits - digits)
+            return to_minor(value, digits) * scale
         except ValueError:
             findings.error_at(
                 place,

@@ -1,6 +1,6 @@
 """From the dates of a note to its funding date, due dates and number of payments."""
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from datetime import date
 
 from tenorbook.basis.conventions import Frequency, MonthEnd, Timing
@@ -59,15 +59,19 @@ def _in_advance(loan: Loan, frequency: Frequency, findings: Findings) -> tuple[d
     if funding is None:
         _no_start(findings)
         return None
-    due = DueDates.of(funding, frequency, loan.month_end or MonthEnd.AUTO)
+    month_end = loan.month_end or MonthEnd.AUTO
     first = loan.first_payment or funding
+    due = DueDates.of(first, frequency, month_end)
+    if loan.first_payment is None:  # derived, so it keeps its day number
+        due = replace(DueDates.after(funding, frequency, month_end), anchor_number=1)
     if first != funding:
         findings.error(
             "First payment",
             f"in advance the first payment falls on the funding date, but First payment is "
             f"{first}{findings.cell('First payment')} and Funding date is "
             f"{funding}{findings.cell('Funding date')}",
-            "make the two dates the same, or set Timing to arrears",
+            "make the two dates the same; payments that start later are payments in arrears with a short "
+            "first period",
             "Funding date",
         )
         return None

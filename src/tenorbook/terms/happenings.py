@@ -6,7 +6,7 @@ from decimal import Decimal
 
 from tenorbook.basis.conventions import AppliesTo, ExtraEffect, Frequency, MonthEnd, PaymentChange
 from tenorbook.basis.problem import NOWHERE, Place
-from tenorbook.calendar.due_dates import DueDates
+from tenorbook.calendar.due_dates import DueDates, is_month_end
 from tenorbook.terms.amounts import Ledger
 from tenorbook.terms.findings import Findings
 from tenorbook.terms.loan import ExtraPayment, RateChange
@@ -22,7 +22,6 @@ def settle_extras(
     funding: date,
     last: date,
     due: DueDates,
-    month_end: MonthEnd,
     findings: Findings,
 ) -> tuple[Extra, ...]:
     """Every extra payment as one dated event, by date and then in the book's order.
@@ -34,7 +33,6 @@ def settle_extras(
         last: the last day of the loan; repetition stops there.
         due: the loan's due dates, which a repeating extra follows when it starts on one of them at the
             loan's own frequency.
-        month_end: the loan's rule, for a repeating extra that counts from its own date.
         findings: receives the errors and warnings.
     """
     extras: list[Extra] = []
@@ -56,7 +54,7 @@ def settle_extras(
                 entry.every is not None,
                 place,
             )
-            for day in _dates(entry, last, due, month_end)
+            for day in _dates(entry, last, due)
         ]
     return tuple(sorted(extras, key=lambda extra: extra.date))
 
@@ -85,29 +83,32 @@ def _usable(entry: ExtraPayment, amount: int, funding: date, place: Place, findi
     return False
 
 
-def _dates(entry: ExtraPayment, last: date, due: DueDates, month_end: MonthEnd) -> Iterator[date]:
+def _dates(entry: ExtraPayment, last: date, due: DueDates) -> Iterator[date]:
     """The dates of one entry, up to the loan's last day."""
     if entry.every is None:
         yield entry.date
         return
     until = min(entry.until, last) if isinstance(entry.until, date) else last
     count = entry.until if isinstance(entry.until, int) else None
-    grid, number = _grid(entry.date, entry.every, due, month_end)
+    grid, number = _grid(entry.date, entry.every, due)
     paid = 0
     while (count is None or paid < count) and grid[number + paid] <= until:
         yield grid[number + paid]
         paid += 1
 
 
-def _grid(start: date, every: Frequency, due: DueDates, month_end: MonthEnd) -> tuple[DueDates, int]:
-    """The dates a repeating extra falls on, and the number of its first."""
+def _grid(start: date, every: Frequency, due: DueDates) -> tuple[DueDates, int]:
+    """The dates a repeating extra falls on, and the number of its first.
+
+    Those of the loan where it starts on one of them at the loan's frequency; else counted from its own
+    date, at month-ends only where the loan's payments are.
+    """
     if every is due.frequency:
         number = due.number_on_or_before(start)
         if due[number] == start:
             return due, number
-    if month_end is MonthEnd.YES:
-        month_end = MonthEnd.AUTO
-    return DueDates.of(start, every, month_end), 1
+    sticks = due.month_end and is_month_end(start)
+    return DueDates.of(start, every, MonthEnd.YES if sticks else MonthEnd.NO), 1
 
 
 def settle_repricings(

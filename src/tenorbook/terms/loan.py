@@ -90,8 +90,8 @@ class RateChange:
     Attributes:
         from_date: the first day that accrues at the new rate.
         annual_rate: as a fraction: 0.0625.
-        payment: re-amortize, keep, or the new payment in currency units; `None`: re-amortize for a
-            solved payment, keep where the note fixes the amount.
+        payment: re-amortize, keep, or the new payment in currency units; `None`: re-amortize a level
+            payment, keep one that decides the term, and keep the principal part of level principal.
         where: header -> cell.
     """
 

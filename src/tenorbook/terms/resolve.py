@@ -9,7 +9,6 @@ from tenorbook.basis.conventions import (
     Frequency,
     InterestRounding,
     LongFirst,
-    MonthEnd,
     PaymentBasis,
     PaymentChange,
     Repayment,
@@ -147,7 +146,6 @@ class _Resolution:
                 self.dating.funding,
                 self._last_day(),
                 self.dating.due,
-                loan.month_end or MonthEnd.AUTO,
                 self.findings,
             ),
             repricings=settle_repricings(
@@ -270,8 +268,7 @@ class _Resolution:
 
     def _day_counts(self) -> tuple[DayCount, DayCount, bool]:
         """The day count, the odd-day count, and whether the loan names the latter."""
-        by_months = self.frequency.months or self.frequency is Frequency.TWICE_A_MONTH
-        default = DayCount.THIRTY_360 if by_months else DayCount.ACTUAL_365_FIXED
+        default = DayCount.ACTUAL_365_FIXED if self.frequency.days else DayCount.THIRTY_360
         day_count = self.loan.day_count or default
         odd = self.loan.odd_day_count
         if odd is None or odd is DayCount.EQUAL_PERIODS:
@@ -297,7 +294,7 @@ class _Resolution:
     def _payment_step(self, step: PaymentStep) -> int:
         if step.step is None:
             return self.ledger.minor_unit
-        amount = self.ledger.amount(step.step, self.loan.place("Payment rounding"), self.findings)
+        amount = self.ledger.step(step.step, self.loan.place("Payment rounding"), self.findings)
         if amount is not None and amount <= 0:
             self.findings.error("Payment rounding", "the step must be above zero", "give a step such as 1.00")
             return 1
@@ -323,9 +320,9 @@ class _Resolution:
         return amount or 0
 
     def _payment_after_repricing(self) -> PaymentChange:
-        """Re-amortized where the payment is solved; what the note fixes is kept."""
-        solved = self.loan.payment is None and self.repayment is Repayment.LEVEL_PAYMENT
-        return PaymentChange.REAMORTIZE if solved else PaymentChange.KEEP
+        """A level payment is re-amortized; a payment that decides the term is kept."""
+        level = self.repayment is Repayment.LEVEL_PAYMENT
+        return PaymentChange.REAMORTIZE if level and self.dating.count else PaymentChange.KEEP
 
     def _last_day(self) -> date:
         """The last day anything can happen: in advance a balloon falls one period after the last payment."""

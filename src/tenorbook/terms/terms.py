@@ -134,6 +134,6 @@ class Terms:
         return self.repayment is Repayment.AT_MATURITY or self.frequency is Frequency.AT_MATURITY
 
     @property
-    def prepays(self) -> bool:
-        """Whether each payment is the interest of the period to come."""
-        return self.in_advance and self.repayment is Repayment.INTEREST_ONLY
+    def leaves_balloon(self) -> bool:
+        """Whether the terms leave principal to be paid after (in arrears: with) the last payment."""
+        return self.repayment is Repayment.INTEREST_ONLY or bool(self.balloon or self.amortized_over)
