@@ -10,6 +10,11 @@ from fractions import Fraction
 from tenorbook.basis.conventions import InterestRounding, PaymentRounding
 
 _SNAP = Context(prec=30)
+_MODES = {
+    PaymentRounding.NEAREST.value: ROUND_HALF_UP,
+    PaymentRounding.UP.value: ROUND_CEILING,
+    PaymentRounding.DOWN.value: ROUND_FLOOR,
+}
 
 
 def divide(numerator: int, denominator: int, rounding: InterestRounding) -> int:
@@ -50,10 +55,5 @@ def round_payment(amount: Decimal, rounding: PaymentRounding, step: int) -> int:
     The amount comes from arithmetic with 50 digits; it is first cut to 30 significant digits, so that
     a payment that is exactly 100.00 is not pushed to 100.01 by the noise of the last place.
     """
-    mode = {
-        PaymentRounding.NEAREST: ROUND_HALF_UP,
-        PaymentRounding.UP: ROUND_CEILING,
-        PaymentRounding.DOWN: ROUND_FLOOR,
-    }[rounding]
     steps = _SNAP.divide(_SNAP.plus(amount), Decimal(step))
-    return int(steps.to_integral_value(mode)) * step
+    return int(steps.to_integral_value(_MODES[rounding.value])) * step

@@ -11,6 +11,7 @@ from collections.abc import Callable, Sequence
 from datetime import date
 from fractions import Fraction
 from itertools import pairwise
+from operator import mul, ne, sub
 
 from tenorbook.basis.conventions import DayCount, Frequency
 from tenorbook.calendar.due_dates import DueDates, is_month_end
@@ -79,6 +80,10 @@ def _actual_actual_isda(start: date, end: date) -> int:
     """Days in leap years x 365 plus days in other years x 366: a numerator over 365 x 366."""
     if start.year == end.year:
         return (end - start).days * (365 if is_leap(start.year) else 366)
+    if end.year == start.year + 1:
+        new_year = date(end.year, 1, 1)
+        left = (new_year - start).days * (365 if is_leap(start.year) else 366)
+        return left + (end - new_year).days * (365 if is_leap(end.year) else 366)
     bounds = [start, *(date(year, 1, 1) for year in range(start.year + 1, end.year + 1)), end]
     return sum((b - a).days * (365 if is_leap(a.year) else 366) for a, b in pairwise(bounds))
 
@@ -168,6 +173,12 @@ _BY_DATES: dict[DayCount, Callable[[date, date], int]] = {
 }
 
 
+def days_between(dates: Sequence[date]) -> list[int]:
+    """Actual days from each date to the next; one fewer than dates."""
+    ordinals = [day.toordinal() for day in dates]
+    return list(map(sub, ordinals[1:], ordinals))
+
+
 def is_equal_period(convention: DayCount, frequency: Frequency) -> bool:
     """Whether every regular period counts the same, whatever its dates."""
     if convention is DayCount.THIRTY_360:
@@ -180,6 +191,7 @@ def regular_fractions(
     dates: Sequence[date],
     frequency: Frequency,
     maturity: date | None = None,
+    days: list[int] | None = None,
 ) -> tuple[list[int], int]:
     """The year fractions of consecutive regular periods, over one common denominator.
 
@@ -188,6 +200,7 @@ def regular_fractions(
         dates: unrolled due dates in order; period k runs from `dates[k]` to `dates[k + 1]`.
         frequency: of the loan.
         maturity: see `year_fraction`.
+        days: actual days of each period, where the caller has them.
 
     Returns:
         Numerators, one fewer than dates, and the denominator.
@@ -199,9 +212,9 @@ def regular_fractions(
         return [1] * periods, frequency.per_year
     if convention in _PER_DAY:
         each, denominator = _PER_DAY[convention]
-        ordinals = [day.toordinal() for day in dates]
-        return [(b - a) * each for a, b in pairwise(ordinals)], denominator
-    return _uneven_fractions(convention, dates, frequency, maturity)
+        days = days_between(dates) if days is None else days
+        return (days if each == 1 else [each * number for number in days]), denominator
+    return _uneven_fractions(convention, dates, frequency, maturity, days)
 
 
 _PER_DAY = {
@@ -212,15 +225,37 @@ _PER_DAY = {
 
 
 def _uneven_fractions(
-    convention: DayCount, dates: Sequence[date], frequency: Frequency, maturity: date | None
+    convention: DayCount,
+    dates: Sequence[date],
+    frequency: Frequency,
+    maturity: date | None,
+    days: list[int] | None,
 ) -> tuple[list[int], int]:
     """Conventions whose count depends on where in the calendar the days lie."""
-    spans = list(pairwise(dates))
-    if convention is DayCount.ACTUAL_ACTUAL_ISDA:
-        return [_actual_actual_isda(a, b) for a, b in spans], _LEAP_AND_NOT
-    if convention is DayCount.ACTUAL_365_LEAP:
-        parts = [((b - a).days, _leap_year_basis(a, b, b, frequency)) for a, b in spans]
-        return [days * (_LEAP_AND_NOT // basis) for days, basis in parts], _LEAP_AND_NOT
+    if convention in (DayCount.ACTUAL_ACTUAL_ISDA, DayCount.ACTUAL_365_LEAP):
+        days = days_between(dates) if days is None else days
+        return _by_kind_of_year(convention, dates, days, frequency), _LEAP_AND_NOT
+    spans = pairwise(dates)
     if convention is DayCount.NL_365:
         return [(b - a).days - leap_days(a, b) for a, b in spans], 365
     return [_thirty_day_months(convention, a, b, maturity) for a, b in spans], 360
+
+
+def _by_kind_of_year(
+    convention: DayCount, dates: Sequence[date], days: list[int], frequency: Frequency
+) -> list[int]:
+    """Numerators over 365 x 366: a day of a leap year weighs 365, a day of another year 366."""
+    years = [day.year for day in dates]
+    weight = {year: 365 if is_leap(year) else 366 for year in set(years)}
+    if convention is DayCount.ACTUAL_365_LEAP and frequency is not Frequency.YEARLY:
+        return [number * weight[year] for number, year in zip(days, years[1:], strict=True)]
+    if convention is DayCount.ACTUAL_365_LEAP:
+        return [
+            number * (365 if leap_days(a, b) else 366)
+            for number, (a, b) in zip(days, pairwise(dates), strict=True)
+        ]
+    numerators = list(map(mul, days, map(weight.__getitem__, years)))
+    for number, crossing in enumerate(map(ne, years, years[1:])):
+        if crossing:
+            numerators[number] = _actual_actual_isda(dates[number], dates[number + 1])
+    return numerators

@@ -7,9 +7,11 @@ steps would stay on the 28th for ever.
 from calendar import monthrange
 from dataclasses import dataclass
 from datetime import date, timedelta
+from functools import cache
 
 from tenorbook.basis.conventions import Frequency, MonthEnd
 
+_TABLE_START, _TABLE_END = 1950 * 12, 2150 * 12
 _HALF = 15  # days between the two dates of `twice a month`
 
 
@@ -71,11 +73,29 @@ class DueDates:
         except OverflowError as fault:
             raise ValueError("a due date falls outside the years 1 to 9999") from fault
 
+    def ordinals(self, first: int, last: int) -> list[int]:
+        """The same dates as day numbers (1 is 1 January of year 1), for counting days."""
+        if not self.frequency.days and self.frequency is not Frequency.TWICE_A_MONTH:
+            counted = self._counted(first - self.anchor_number, last - self.anchor_number)
+            if _tabled(counted):
+                return _ordinal_table(self._day())[_slice(counted)]
+        return [day.toordinal() for day in self.between(first, last)]
+
     def _months(self, steps: range) -> list[date]:
+        counted = self._counted(steps[0], steps[-1])
+        if _tabled(counted):
+            return _table(self._day())[_slice(counted)]
+        return [_on(month, self._day()) for month in counted]
+
+    def _counted(self, first: int, last: int) -> range:
+        """The months, counted from year 0, that lie so many periods from the anchor."""
         months = self.frequency.months or 12
         start = self.anchor.year * 12 + self.anchor.month - 1
-        day = 31 if self.month_end else self.anchor.day
-        return [_on(start + months * step, day) for step in steps]
+        return range(start + months * first, start + months * last + 1, months)
+
+    def _day(self) -> int:
+        """The day number aimed at in each month."""
+        return 31 if self.month_end else self.anchor.day
 
     def _half_months(self, steps: range) -> list[date]:
         late = self.anchor.day > _HALF
@@ -100,6 +120,28 @@ def _on(month: int, day: int) -> date:
     if day > 28:
         day = min(day, monthrange(year, zero_based + 1)[1])
     return date(year, zero_based + 1, day)
+
+
+def _tabled(months: range) -> bool:
+    """Whether the tables hold all of these months."""
+    return bool(months) and months[0] >= _TABLE_START and months[-1] < _TABLE_END
+
+
+def _slice(months: range) -> slice:
+    """Where the tables hold these months."""
+    return slice(months.start - _TABLE_START, months.stop - _TABLE_START, months.step)
+
+
+@cache
+def _table(day: int) -> list[date]:
+    """The day of every month from 1950 on, made once: the loans of a book share their months."""
+    return [_on(month, day) for month in range(_TABLE_START, _TABLE_END)]
+
+
+@cache
+def _ordinal_table(day: int) -> list[int]:
+    """The dates of `_table` as day numbers."""
+    return [dated.toordinal() for dated in _table(day)]
 
 
 def is_month_end(day: date) -> bool:

@@ -84,6 +84,11 @@ class Accrual:
             ahead.run_to((span,), span.end, balance, balance_row, rate)
         return ahead
 
+    def forget_settled(self) -> None:
+        """Drops what was paid in advance and ran just so: it has nothing left to post."""
+        for item in [item for item, amount in self.amounts.items() if not amount]:
+            self.drop(item)
+
     def add(self, other: "Accrual") -> None:
         """Interest of another accrual that is posted together with this one."""
         for item, amount in other.amounts.items():

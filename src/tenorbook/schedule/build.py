@@ -32,7 +32,8 @@ def build(terms: Terms) -> Schedule:
     state = _walk_planned(terms)
     schedule = state.columns.schedule(terms)
     assert_invariants(schedule)
-    return replace(schedule, problems=(*schedule.problems, *exceptions_of(schedule)))
+    found = tuple(exceptions_of(schedule))
+    return replace(schedule, problems=(*schedule.problems, *found)) if found else schedule
 
 
 def _walk_planned(terms: Terms) -> State:

@@ -4,10 +4,10 @@ import datetime as dt
 from collections.abc import Sequence
 from dataclasses import dataclass, field
 from decimal import Decimal
-from itertools import pairwise
 
 from tenorbook.basis.conventions import RowKind
 from tenorbook.basis.problem import Problem
+from tenorbook.schedule.kernel import Run
 from tenorbook.schedule.ledger import Instalment, Item, Part, Schedule
 from tenorbook.terms.terms import Terms
 
@@ -29,7 +29,8 @@ class Columns:
     payment: list[int] = field(default_factory=list)
     closing: list[int] = field(default_factory=list)
     draw: list[int] = field(default_factory=list)
-    fractions: list[tuple[int, int]] = field(default_factory=list)
+    numerators: list[int] = field(default_factory=list)
+    denominators: list[int] = field(default_factory=list)
     irregular: dict[int, tuple[Part, ...]] = field(default_factory=dict)
     paid_before: dict[int, tuple[int, ...]] = field(default_factory=dict)
     carried: dict[int, int] = field(default_factory=dict)
@@ -67,8 +68,10 @@ class Columns:
         row = len(self.date)
         if paid_before:
             self.paid_before[row] = paid_before
-        self.fractions.append(self._single_fraction(parts, row, date, rate))
-        if parts and self.fractions[row] is _NO_DAYS:
+        fraction = self._single_fraction(parts, row, date, rate)
+        self.numerators.append(fraction[0])
+        self.denominators.append(fraction[1])
+        if parts and fraction is _NO_DAYS:
             self.irregular[row] = parts
         self.days.append((date - self.date[-1]).days if self.date else 0)
         self.kind.append(kind)
@@ -100,39 +103,37 @@ class Columns:
 
     def add_run(
         self,
+        run: Run,
         dates: Sequence[dt.date],
+        days: Sequence[int],
         rate: Decimal,
-        opening: int,
-        interest: list[int],
-        closings: list[int],
-        fractions: list[tuple[int, int]],
+        numerators: Sequence[int],
+        denominator: int,
     ) -> None:
         """Adds consecutive plain payment rows.
 
         Args:
+            run: their figures.
             dates: of the rows.
+            days: actual days of each period.
             rate: in force throughout.
-            opening: balance before the first of them.
-            interest: of each.
-            closings: balance after each.
-            fractions: year fraction of each.
+            numerators: year fraction of each period, over the denominator.
+            denominator: common to all.
         """
         count = len(dates)
-        ordinals = [day.toordinal() for day in (self.date[-1], *dates)]
-        openings = [opening, *closings[:-1]]
-        principal = [before - after for before, after in zip(openings, closings, strict=True)]
-        self.days += [after - before for before, after in pairwise(ordinals)]
+        self.days += days
         self.kind += [RowKind.PAYMENT] * count
         self.date += dates
         self.annual_rate += [rate] * count
-        self.opening += openings
-        self.interest += interest
-        self.principal += principal
+        self.opening += run.opening
+        self.interest += run.interest
+        self.principal += run.principal
         self.extra += [0] * count
-        self.payment += [a + b for a, b in zip(interest, principal, strict=True)]
-        self.closing += closings
+        self.payment += run.payment
+        self.closing += run.closing
         self.draw += [0] * count
-        self.fractions += fractions
+        self.numerators += numerators
+        self.denominators += [denominator] * count
 
     def schedule(self, terms: Terms) -> Schedule:
         """The finished schedule."""
@@ -151,7 +152,8 @@ class Columns:
             payment=self.payment,
             closing=self.closing,
             draw=self.draw,
-            fractions=self.fractions,
+            numerators=self.numerators,
+            denominators=self.denominators,
             irregular=self.irregular,
             paid_before=self.paid_before,
             carried=self.carried,

@@ -17,6 +17,7 @@ def scheduled_payment(state: State, day: dt.date, period_ahead: int) -> None:
         day: the due date.
         period_ahead: the period that starts on the day.
     """
+    state.accrual.forget_settled()
     ahead = _interest_ahead(state, period_ahead)
     if ahead is not None:
         state.accrual.add(ahead)
@@ -128,6 +129,6 @@ def _last_in_advance(state: State, regular: int, owed: int) -> int:
         return regular
     if not balloon:
         return owed
-    if state.reduced or given or state.balance < balloon:
+    if state.reduced or given or owed < balloon:
         return regular
     return owed - balloon

@@ -16,6 +16,8 @@ def exceptions_of(schedule: Schedule) -> Iterator[Problem]:
 
 
 def _uncovered_interest(schedule: Schedule) -> Iterator[Problem]:
+    if min(schedule.principal) >= 0:
+        return
     payments = zip(schedule.kind, schedule.principal, schedule.date, strict=True)
     short = [day for kind, principal, day in payments if kind is RowKind.PAYMENT and principal < 0]
     if short:

@@ -1,75 +1,115 @@
 """The recurrence: balance x factor, rounded once a period, and what the payment leaves.
 
-Plain integers throughout. A factor is `numerator / denominator`, so interest is exact before it is
-rounded. These loops are where a long schedule spends its time; everything out of the ordinary is
-handled by `walk`.
+Plain integers throughout. A period is given as its growth `1 + factor`, a numerator over a common
+denominator, so interest is exact before it is rounded. These loops are where a long schedule spends
+its time; everything out of the ordinary is handled by `walk`.
 """
 
 from collections.abc import Sequence
-from itertools import pairwise
+from operator import sub
+from typing import NamedTuple
 
 from tenorbook.basis.conventions import InterestRounding
 from tenorbook.basis.rounding import divide
 
-NEAREST = (InterestRounding.HALF_UP, InterestRounding.NONE)
+_NEAREST = (InterestRounding.HALF_UP, InterestRounding.NONE)
+
+
+class Run(NamedTuple):
+    """Columns of consecutive periods, in the ledger's unit.
+
+    Attributes:
+        interest: rounded, of each period.
+        principal: repaid with each payment; negative where it does not cover the interest.
+        payment: interest + principal.
+        opening: balance before each payment.
+        closing: balance after it.
+    """
+
+    interest: list[int]
+    principal: list[int]
+    payment: list[int]
+    opening: list[int]
+    closing: list[int]
+
+    def first(self, count: int) -> "Run":
+        """The first periods of a run."""
+        return Run(*(column[:count] for column in self))
+
+
+def with_last_payment(run: Run, growth: int, denominator: int, rounding: InterestRounding) -> Run:
+    """A run and one more period, whose payment repays what is left."""
+    left = run.closing[-1]
+    due = divide(left * (growth - denominator), denominator, rounding)
+    last = ([due], [left], [due + left], [left], [0])
+    return Run(*(column + end for column, end in zip(run, last, strict=True)))
 
 
 def level_payment_run(
     balance: int,
     payment: int,
-    numerators: Sequence[int],
+    growths: Sequence[int],
     denominator: int,
     rounding: InterestRounding,
-) -> tuple[list[int], list[int]]:
+) -> Run:
     """A run of equal payments, one a period.
 
     Args:
         balance: before the run.
-        payment: each payment; interest first, the rest is principal (negative if it does not cover it).
-        numerators: the factor of each period over `denominator`.
+        payment: each payment; interest first, the rest is principal.
+        growths: 1 + factor of each period, over `denominator`.
         denominator: positive.
         rounding: of each period's interest.
 
     Returns:
-        Interest and closing balance of each period. The run does not stop at zero: closings that are
-        not positive, and all after them, are for the caller to cut off.
+        The run. It does not stop at zero: closings that are not positive, and all after them, are for
+        the caller to cut off.
     """
-    if rounding in NEAREST and balance >= 0 and min(numerators, default=0) >= 0:
-        closings = _nearest(balance, payment, numerators, denominator)
-        interest = [after - before + payment for before, after in pairwise([balance, *closings])]
-        return interest, closings
-    interest, closings = [], []
-    for numerator in numerators:
-        due = divide(balance * numerator, denominator, rounding)
-        balance += due - payment
-        interest.append(due)
-        closings.append(balance)
-    return interest, closings
+    if rounding in _NEAREST and balance >= 0 and min(growths, default=denominator) >= denominator:
+        closing = _nearest(balance, payment, growths, denominator)
+    else:
+        closing = _rounded(balance, payment, growths, denominator, rounding)
+    opening = [balance, *closing[:-1]]
+    principal = list(map(sub, opening, closing))
+    interest = [payment - part for part in principal]
+    return Run(interest, principal, [payment] * len(closing), opening, closing)
 
 
-def _nearest(balance: int, payment: int, numerators: Sequence[int], denominator: int) -> list[int]:
-    """Closing balances where nothing is negative: floor(x + 1/2) is half away from zero."""
-    closings: list[int] = []
-    append = closings.append
-    double = 2 * denominator
-    for numerator in numerators:
-        balance += (2 * balance * numerator + denominator) // double - payment
-        append(balance)
-    return closings
+def _nearest(balance: int, payment: int, growths: Sequence[int], denominator: int) -> list[int]:
+    """Closing balances where nothing is negative.
+
+    floor(balance x growth + 1/2) - payment, with the half and the payment brought over the same
+    denominator. Its whole half serves an odd denominator too, which has no exact half to decide.
+    """
+    shift = denominator // 2 - payment * denominator
+    return [balance := (balance * growth + shift) // denominator for growth in growths]
+
+
+def _rounded(
+    balance: int, payment: int, growths: Sequence[int], denominator: int, rounding: InterestRounding
+) -> list[int]:
+    """Closing balances under any rounding and sign."""
+    closing = []
+    for growth in growths:
+        balance += divide(balance * (growth - denominator), denominator, rounding) - payment
+        closing.append(balance)
+    return closing
 
 
 def level_principal_run(
     balance: int,
     principal: int,
-    numerators: Sequence[int],
+    growths: Sequence[int],
     denominator: int,
     rounding: InterestRounding,
-) -> tuple[list[int], list[int]]:
+) -> Run:
     """A run of equal principal parts (0: interest only), one a period; otherwise as `level_payment_run`."""
-    closings = [balance - principal * number for number in range(1, len(numerators) + 1)]
-    openings = [balance, *closings[:-1]]
+    count = len(growths)
+    closing = [balance - principal * number for number in range(1, count + 1)]
+    opening = [balance, *closing[:-1]]
     interest = [
-        divide(opening * numerator, denominator, rounding)
-        for opening, numerator in zip(openings, numerators, strict=True)
+        divide(before * (growth - denominator), denominator, rounding)
+        for before, growth in zip(opening, growths, strict=True)
     ]
-    return interest, closings
+    payment = [principal + due for due in interest]
+    return Run(interest, [principal] * count, payment, opening, closing)

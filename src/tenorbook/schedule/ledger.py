@@ -10,11 +10,14 @@ from decimal import Decimal
 from enum import StrEnum
 from fractions import Fraction
 from functools import cached_property
-from typing import NamedTuple
+from typing import TYPE_CHECKING, NamedTuple
 
 from tenorbook.basis.conventions import Repayment, RowKind
 from tenorbook.basis.problem import Problem
 from tenorbook.terms.terms import Terms
+
+if TYPE_CHECKING:
+    import pandas as pd
 
 
 class Item(StrEnum):
@@ -117,8 +120,9 @@ class Schedule:
             stretches it was computed from. `parts` gives them for every row.
         paid_before: for rows whose stretches were partly posted earlier (an extra payment that took
             interest first), the rows that posted it: interest = rounded stretches less theirs.
-        fractions: numerator and denominator of the year fraction between the row and the one before.
-            Meaningful only for rows not in `irregular`.
+        numerators: of the year fraction between the row and the one before; 0 where the row posts no
+            interest. Meaningful only for rows not in `irregular`.
+        denominators: below it.
         problems: what someone should know: warnings and notes; never errors.
     """
 
@@ -136,7 +140,8 @@ class Schedule:
     payment: Sequence[int]
     closing: Sequence[int]
     draw: Sequence[int]
-    fractions: Sequence[tuple[int, int]]
+    numerators: Sequence[int]
+    denominators: Sequence[int]
     irregular: Mapping[int, tuple[Part, ...]]
     paid_before: Mapping[int, tuple[int, ...]]
     carried: Mapping[int, int]
@@ -172,11 +177,22 @@ class Schedule:
         """The stretches of accrual that the interest of a row was computed from; empty if none was due."""
         if row in self.irregular:
             return self.irregular[row]
-        if self.fractions[row][0] == 0:
+        if self.numerators[row] == 0:
             return ()
-        fraction = Fraction(*self.fractions[row])
+        fraction = Fraction(self.numerators[row], self.denominators[row])
         rate = self.annual_rate[row]
         return (Part(self.date[row - 1], self.date[row], row - 1, rate, fraction, Fraction(rate) * fraction),)
+
+    def frame(self, *, exact: bool = False) -> "pd.DataFrame":
+        """The rows as a pandas frame, under the column names of `schedules.csv`.
+
+        Args:
+            exact: amounts and rates as Decimals in object columns. By default they are float64, the
+                nearest double to each exact figure; dates are datetime64, `row` and `days` int64.
+        """
+        from tenorbook.schedule.frame import to_frame
+
+        return to_frame(self, exact)
 
     @cached_property
     def last_row(self) -> int:

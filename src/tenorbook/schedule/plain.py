@@ -1,9 +1,9 @@
 """Runs of periods in which nothing but the scheduled payment happens, taken in one step."""
 
 import datetime as dt
-from fractions import Fraction
+from typing import NamedTuple
 
-from tenorbook.schedule.kernel import level_payment_run, level_principal_run
+from tenorbook.schedule.kernel import Run, level_payment_run, level_principal_run, with_last_payment
 from tenorbook.schedule.state import State
 
 _SHORTEST_RUN = 4  # periods below which a run is not worth preparing
@@ -14,46 +14,73 @@ def take_plain_run(state: State) -> bool:
     last = _last_plain(state)
     if last - state.at < _SHORTEST_RUN:
         return False
-    numerators = state.steps.numerators[state.at : last]
-    interest, closings = _run(state, numerators)
-    count = _usable(state, interest, closings)
+    first = state.at
+    factors = _factors(state, last)
+    run = _run(state, factors.growths[: last - first], factors.denominator)
+    count = _usable(state, run)
     if count < _SHORTEST_RUN:
         return False
+    run = run.first(count) if count < last - first else run
+    if first + count == last and _last_payment_is_plain(state, last):
+        rounding = state.terms.interest_rounding
+        run = with_last_payment(run, factors.growths[-1], factors.denominator, rounding)
+        count, state.over = count + 1, True
     state.columns.add_run(
-        state.steps.boundaries[state.at + 1 : state.at + 1 + count],
+        run,
+        state.steps.boundaries[first + 1 : first + 1 + count],
+        state.steps.days[first : first + count],
         state.rate,
-        state.balance,
-        interest[:count],
-        closings[:count],
-        [(numerator, state.steps.denominator) for numerator in numerators[:count]],
+        state.steps.numerators[first : first + count],
+        state.steps.denominator,
     )
     state.rate_before = state.rate
-    state.balance = closings[count - 1]
+    state.balance = run.closing[-1]
     state.at += count
     state.paid += count
     return True
 
 
-def _run(state: State, numerators: list[int]) -> tuple[list[int], list[int]]:
-    """Interest and closing balances of the periods ahead."""
-    annual = Fraction(state.rate)
+class _Factors(NamedTuple):
+    """1 + factor of each period ahead, over one denominator; one period more than the run."""
+
+    growths: list[int]
+    denominator: int
+
+
+def _factors(state: State, last: int) -> _Factors:
+    rate_numerator, rate_denominator = state.rate.as_integer_ratio()
+    denominator = state.steps.denominator * rate_denominator
+    numerators = state.steps.numerators[state.at : last + 1]
+    return _Factors([number * rate_numerator + denominator for number in numerators], denominator)
+
+
+def _run(state: State, growths: list[int], denominator: int) -> Run:
+    """The periods ahead, as if every one of them were plain."""
     run = level_payment_run if state.pays_level() else level_principal_run
-    return run(
-        state.balance,
-        state.instalment if state.amortizing(state.paid + 1) else 0,
-        [numerator * annual.numerator for numerator in numerators],
-        state.steps.denominator * annual.denominator,
-        state.terms.interest_rounding,
-    )
+    amount = state.instalment if state.amortizing(state.paid + 1) else 0
+    return run(state.balance, amount, growths, denominator, state.terms.interest_rounding)
 
 
-def _usable(state: State, interest: list[int], closings: list[int]) -> int:
+def _last_payment_is_plain(state: State, last: int) -> bool:
+    """Whether the period after a run brings the contract's last payment and nothing else.
+
+    Where the note fixes the payment, what it leaves at the end is of interest, and the last payment is
+    taken apart.
+    """
+    terms, final = state.terms, last + 1
+    if terms.in_advance or terms.payment is not None or final != state.plan.count:
+        return False
+    event = state.next_event()
+    return event is None or event > state.steps.boundaries[final]
+
+
+def _usable(state: State, run: Run) -> int:
     """How many periods of a run are plain after all: a balance is left, and the interest is covered."""
-    count, floor = len(closings), _floor(state)
-    if closings[-1] <= floor:
-        count = next(number for number, closing in enumerate(closings) if closing <= floor)
+    count, floor = len(run.closing), _floor(state)
+    if run.closing[-1] <= floor:
+        count = next(number for number, closing in enumerate(run.closing) if closing <= floor)
     if state.pays_level() and state.carries_interest():
-        uncovered = (number for number, due in enumerate(interest) if due > state.instalment)
+        uncovered = (number for number, due in enumerate(run.interest) if due > state.instalment)
         count = min(count, next(uncovered, count))
     return count
 

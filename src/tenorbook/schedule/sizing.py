@@ -2,7 +2,7 @@
 
 After n payments a balance B0 has become ``B0 x G - P x S``: G is the growth of 1, S what payments of 1
 have grown to. Setting that to the balloon gives the payment. G and S are built period by period in
-Decimal with 60 digits; where all factors are equal the sum closes to the ordinary annuity (in
+Decimal with 50 digits; where all factors are equal the sum closes to the ordinary annuity (in
 advance: the annuity due).
 """
 
@@ -14,10 +14,10 @@ from typing import NamedTuple
 
 from tenorbook.basis.conventions import PaymentBasis, Repayment
 from tenorbook.basis.rounding import round_payment
-from tenorbook.schedule.steps import Steps
+from tenorbook.schedule.steps import Steps, exact
 
-PRECISION = Context(prec=60)
-_BLOCK = 12  # periods a block: a year of months, whose pattern of days recurs
+PRECISION = Context(prec=50)
+_BLOCKS = (48, 12, 1)  # months of a leap-year cycle, of a year: their patterns of days recur
 
 
 class Growth(NamedTuple):
@@ -53,18 +53,27 @@ def dated_periods(numerators: Sequence[int], denominator: int, rate: Fraction) -
     """Periods of uneven factors; blocks with the same pattern of days are worked out once."""
     if numerators and numerators.count(numerators[0]) == len(numerators):
         return equal_periods(rate * Fraction(numerators[0], denominator), len(numerators))
-    singles = {num: one_period(rate * Fraction(num, denominator)) for num in set(numerators)}
-    blocks: dict[tuple[int, ...], Growth] = {}
-    total = _NOTHING
-    for start in range(0, len(numerators), _BLOCK):
-        pattern = tuple(numerators[start : start + _BLOCK])
-        if pattern not in blocks:
-            block = _NOTHING
-            for numerator in pattern:
-                block = block.then(singles[numerator])
-            blocks[pattern] = block
-        total = total.then(blocks[pattern])
-    return total
+    below = Decimal(denominator * rate.denominator)
+    known: dict[tuple[int, ...], Growth] = {
+        (numerator,): Growth(1 + numerator * rate.numerator / below, Decimal(1))
+        for numerator in set(numerators)
+    }
+    return _composed(tuple(numerators), _BLOCKS, known)
+
+
+def _composed(
+    pattern: tuple[int, ...], sizes: tuple[int, ...], known: dict[tuple[int, ...], Growth]
+) -> Growth:
+    """A run of periods as blocks of a size, those as blocks of the next size, down to single periods."""
+    balance, payments = _NOTHING
+    size, smaller = sizes[0], sizes[1:]
+    for start in range(0, len(pattern), size):
+        block = pattern[start : start + size]
+        if block not in known:
+            known[block] = _composed(block, smaller, known)
+        grown, paid = known[block]
+        balance, payments = balance * grown, payments * grown + paid
+    return Growth(balance, payments)
 
 
 @dataclass(frozen=True, slots=True)
@@ -119,7 +128,7 @@ class Sizer:
         """From the payment numbered `paid` (or the last interest-only one) to the last that sizes."""
         steps, terms = self.steps, self.steps.terms
         start, end = max(paid, terms.interest_only), self._sized_to()
-        annual, growth = Fraction(rate), _NOTHING
+        annual, growth = exact(rate), _NOTHING
         if terms.in_advance:
             # Payment k is made at the start of period k, so it has the factor of period k - 1; for the
             # first one that amortizes no interest has run, or it was prepaid.

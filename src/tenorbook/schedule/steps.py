@@ -9,18 +9,28 @@ from dataclasses import dataclass, replace
 from datetime import date
 from decimal import Decimal
 from fractions import Fraction
+from functools import lru_cache
+from operator import sub
 
 from tenorbook.basis.conventions import DayCount, FirstPeriod, Frequency, LongFirst
-from tenorbook.calendar.day_count import regular_fractions, year_fraction
+from tenorbook.calendar.day_count import days_between, regular_fractions, year_fraction
 from tenorbook.calendar.due_dates import DueDates
 from tenorbook.schedule.ledger import Item
 from tenorbook.terms.dating import MOST_PAYMENTS, MOST_YEARS
 from tenorbook.terms.terms import Terms
 
 
-@dataclass(frozen=True, slots=True)
+@lru_cache(maxsize=256)
+def exact(rate: Decimal) -> Fraction:
+    """An annual rate as an exact fraction."""
+    return Fraction(rate)
+
+
+@dataclass(frozen=True, slots=True, eq=False)
 class Span:
     """A stretch that accrues as a whole, and can be split by an event inside it.
+
+    Stretches are told apart by identity: what has accrued of one is kept by it.
 
     Attributes:
         start: first day that accrues; before the funding date for the regular period that a short
@@ -46,7 +56,7 @@ class Span:
 
     def factor(self, rate: Decimal) -> Fraction:
         """Interest on 1 over the whole stretch: (1+i)^k (1+odd) - 1 where whole periods compound."""
-        annual = Fraction(rate)
+        annual = exact(rate)
         if not self.compounding:
             return annual * self.whole
         growth = 1 + annual * self.odd
@@ -67,6 +77,7 @@ class Steps:
             1 as if it were regular.
         denominator: common to all periods.
         last: number of the last boundary of the loan.
+        days: actual days of each period.
         first: the stretches of period 1; empty when it is regular.
         maturity: the contract's last date, where 30E/360 ISDA leaves the end of February as it is;
             `None` while a fixed payment is still to decide it.
@@ -79,6 +90,7 @@ class Steps:
     last: int
     first: tuple[Span, ...]
     maturity: date | None
+    days: list[int]
 
     def spans(self, period: int) -> tuple[Span, ...]:
         """The stretches of a period."""
@@ -117,7 +129,7 @@ class Steps:
         """Interest on 1 from the start of a stretch to `day`, at one rate throughout."""
         if day >= span.end:
             return span.factor(rate)
-        return Fraction(rate) * self.counted_to(span, day)
+        return exact(rate) * self.counted_to(span, day)
 
 
 def make_steps(terms: Terms, maturity: date | None = None) -> Steps:
@@ -135,11 +147,14 @@ def make_steps(terms: Terms, maturity: date | None = None) -> Steps:
     due = terms.due.between(offset, offset + max(last, sized_to))
     if maturity is None and terms.count is not None:
         maturity = due[last if terms.leaves_balloon else terms.count - offset]
-    numerators, denominator = regular_fractions(terms.day_count, due, terms.frequency, maturity)
+    ordinals = terms.due.ordinals(offset, offset + max(last, sized_to))
+    days = list(map(sub, ordinals[1:], ordinals))
+    numerators, denominator = regular_fractions(terms.day_count, due, terms.frequency, maturity, days)
     boundaries = due
     if due[0] != terms.funding:
         boundaries = [terms.funding, *due[1:]]
-    bare = Steps(terms, boundaries, numerators, denominator, last, (), maturity)
+        days = [(due[1] - terms.funding).days, *days[1:]]
+    bare = Steps(terms, boundaries, numerators, denominator, last, (), maturity, days)
     return bare if boundaries is due else _with_odd_first_period(bare, due[0])
 
 
@@ -154,7 +169,7 @@ def _last_boundary(terms: Terms) -> int:
 def _single_step(terms: Terms) -> Steps:
     """One period from funding to maturity, counted by its dates."""
     boundaries = [terms.funding, terms.due[1]]
-    bare = Steps(terms, boundaries, [], 1, 1, (), terms.due[1])
+    bare = Steps(terms, boundaries, [], 1, 1, (), terms.due[1], days_between(boundaries))
     whole = _single_fraction(bare)
     return replace(bare, numerators=[whole.numerator], denominator=whole.denominator)
 

@@ -1,0 +1,1 @@
+"""Files to plain cells, within limits. Knows file formats, and nothing about loans."""

@@ -1,0 +1,1 @@
+"""One cell to one value: amounts, rates, dates, lengths, counts, words. Nothing here knows a loan."""
