@@ -76,11 +76,10 @@ def total_words() -> frozenset[str]:
 
 @cache
 def month_number(word: str) -> int | None:
-    """1 to 12 for an English month name or its first three letters or more; `None` if it is none."""
-    lowered = word.casefold().rstrip(".")
-    if len(lowered) < 3:
-        return None
-    for number, name in enumerate(section("months")["names"], start=1):
-        if name.startswith(lowered) or (name, lowered) == ("september", "sept"):
-            return number
-    return None
+    """1 to 12 for an English month name or its usual short form; `None` if it is none.
+
+    Only the vocabulary is dateutil's: its parser would fill what a text leaves out from the clock.
+    """
+    from dateutil.parser import parserinfo
+
+    return parserinfo().month(word.rstrip("."))
