@@ -356,8 +356,9 @@ class ExtraEffect(Documented):
     PAY_AHEAD = (
         "pay ahead",
         Doc(
-            "Principal falls at once, and the principal of the next instalments is reduced until the "
-            "amount is used up; interest goes on being paid."
+            "Principal falls at once, and the next instalments are reduced until the amount is used up; "
+            "interest goes on accruing, and what an instalment then leaves unpaid follows the loan's rule "
+            "for unpaid interest."
         ),
     )
 

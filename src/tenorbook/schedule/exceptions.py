@@ -25,7 +25,7 @@ def _uncovered_interest(schedule: Schedule) -> Iterator[Problem]:
         yield warning(
             terms.loan_id,
             terms.loan.place("Payment"),
-            f"{len(short)} payments do not cover the interest, the first on {short[0]}; what is unpaid is "
+            f"{_counted(len(short))} not cover the interest, the first on {short[0]}; what is unpaid is "
             "added to the balance",
             "check the payment and the rate",
         )
@@ -61,3 +61,7 @@ def _decided_term(schedule: Schedule) -> Iterator[Problem]:
             f"Term is blank: the payment of {to_text(terms.payment or 0, terms.digits)} repays the loan in "
             f"{number} payments, the last on {schedule.date[-1]}",
         )
+
+
+def _counted(payments: int) -> str:
+    return "1 payment does" if payments == 1 else f"{payments:,} payments do"

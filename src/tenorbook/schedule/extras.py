@@ -59,7 +59,7 @@ def _take_interest(state: State, interest: int, row: int) -> None:
         return
     carried = min(state.carried, max(0, interest))
     state.carried -= carried
-    if not state.accrual.pay(interest - carried):
+    if not state.accrual.pay(interest - carried) and row not in state.accrual.paid_rows:
         state.accrual.paid_rows.append(row)
 
 

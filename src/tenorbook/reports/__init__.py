@@ -1,0 +1,1 @@
+"""Results to tables: one report a file. Knows no file format."""

@@ -1,0 +1,1 @@
+"""Tables to files: workbooks, CSV, Parquet, whole or not at all. Knows no loan."""
