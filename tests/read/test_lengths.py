@@ -27,6 +27,7 @@ PAYMENTS, MONTHS, WEEKS, DAYS = LengthUnit.PAYMENTS, LengthUnit.MONTHS, LengthUn
         (text("84 months"), Rules(), 84, MONTHS),
         (text("84 mo."), Rules(), 84, MONTHS),
         (text("7y 6m"), Rules(), 90, MONTHS),
+        (text("8 quarters"), Rules(), 24, MONTHS),
         (text("7 years and 6 months"), Rules(), 90, MONTHS),
         (text("7 years, 6 months"), Rules(), 90, MONTHS),
         (text("7 years 0 months"), Rules(), 84, MONTHS),

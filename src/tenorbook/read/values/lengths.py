@@ -12,6 +12,7 @@ from tenorbook.terms.loan import Length, LengthUnit
 
 _LENGTH = "enter a number of payments, or a duration such as 30 years or 84 months"
 _PART = re.compile(r"(\d+(?:[.,]\d+)?) ?-?([a-z]+)\.?(?:,? and |[, ]+)?", re.IGNORECASE)
+_MONTHS = {"years": 12, "quarters": 3}
 _QUOTED = re.compile(r'"([^"]*)"')
 
 
@@ -81,9 +82,9 @@ def _added(parts: list[tuple[str, str]], rules: Rules) -> Length:
 
 
 def _in_unit(number: Decimal, unit: str, *, may_be_zero: bool = False) -> Length:
-    """Years become months; other units are kept."""
-    if unit == "years":
-        return _whole(number * 12, LengthUnit.MONTHS, may_be_zero=may_be_zero)
+    """Years and quarters become months; other units are kept."""
+    if unit in _MONTHS:
+        return _whole(number * _MONTHS[unit], LengthUnit.MONTHS, may_be_zero=may_be_zero)
     return _whole(number, LengthUnit(unit), may_be_zero=may_be_zero)
 
 
