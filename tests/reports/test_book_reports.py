@@ -4,7 +4,7 @@ from datetime import date
 from decimal import Decimal
 
 from reports.samples import AS_OF, book_of, extra, note
-from tenorbook.basis.conventions import Repayment
+from tenorbook.basis.conventions import Repayment, Side
 from tenorbook.reports.exceptions import exceptions_sheet
 from tenorbook.reports.flat import streams
 from tenorbook.reports.maturities import maturities_sheet, run_offs
@@ -123,8 +123,17 @@ def test_totals_are_by_currency() -> None:
     assert totals.column("currency").values == ["USD", "EUR"]
     assert totals.column("principal").values == [50_000_000, 25_000_000]
     assert totals.column("principal").exceptions[0] == (
-        "ROUND(SUMIFS([loans.principal:all],[loans.currency:all],[currency]),2)"
+        "ROUND(SUMIFS([loans.principal:all],[loans.currency:all],[currency],[loans.side:all],[side]),2)"
     )
+
+
+def test_what_we_owe_and_are_owed_is_never_added_up() -> None:
+    book = book_of([note("A"), note("B", side=Side.RECEIVABLE), note("E", currency="EUR")])
+    found = tables(summary_sheet(book, book.results, {}, live=False))["totals"]
+    assert found.column("what").values == ["USD payable", "USD receivable", "EUR"]
+    assert found.column("principal").values == [25_000_000, 25_000_000, 25_000_000]
+    maturities = tables(maturities_sheet(book, book.results, "Summary"))
+    assert maturities["bands_USD_receivable"].column("loan").values == ["B"]
 
 
 def test_totals_stand_under_the_columns_they_add_up() -> None:
@@ -132,7 +141,7 @@ def test_totals_stand_under_the_columns_they_add_up() -> None:
     found = tables(summary_sheet(book, book.results, {}, live=False))
     loans = [column.header for column in found["loans"].columns]
     for number, column in enumerate(found["totals"].columns):
-        if column.header not in ("", "Totals by currency"):
+        if column.header not in ("", "Totals"):
             assert loans[number] == column.header
 
 
@@ -169,11 +178,11 @@ def test_maturities_add_up_to_the_balance() -> None:
     for code, each in (("USD", book.results[0]), ("JPY", book.results[1])):
         assert each.position is not None
         for kind in ("bands", "years"):
-            assert found[f"{kind}_{code}"].column("total").values == [each.position.balance]
-        assert found[f"bands_{code}"].column("band_0").values == [each.position.due_within_12_months]
-    headers = [column.header for column in found["bands_USD"].columns]
+            assert found[f"{kind}_{code}_payable"].column("total").values == [each.position.balance]
+        assert found[f"bands_{code}_payable"].column("band_0").values == [each.position.due_within_12_months]
+    headers = [column.header for column in found["bands_USD_payable"].columns]
     assert headers[1:3] == ["to 31 Dec 2026", "to 31 Dec 2027"]
-    assert found["years_USD"].columns[1].header == "rest of 2025"
+    assert found["years_USD_payable"].columns[1].header == "rest of 2025"
 
 
 def test_exceptions_name_severity_by_a_word() -> None:

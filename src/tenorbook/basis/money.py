@@ -55,3 +55,8 @@ def to_text(minor: int, digits: int) -> str:
     sign = "-" if minor < 0 else ""
     padded = str(abs(minor)).rjust(digits + 1, "0")
     return f"{sign}{padded[:-digits]}.{padded[-digits:]}"
+
+
+def to_words(minor: int, digits: int) -> str:
+    """Whole minor units as a sentence shows them, with thousands marks: `1,293,043.92`."""
+    return f"{to_decimal(minor, digits):,f}"

@@ -6,8 +6,8 @@ from typing import Any
 
 from tenorbook.basis.conventions import Side
 from tenorbook.basis.money import to_decimal
-from tenorbook.reports.currencies import computed
 from tenorbook.reports.figures import figures
+from tenorbook.reports.groups import computed
 from tenorbook.reports.result import BookResult, LoanResult
 from tenorbook.tables.stream import Field, Kind, Stream
 

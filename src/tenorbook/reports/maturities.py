@@ -1,16 +1,16 @@
 """Principal by when it falls due: by calendar year, by bands of twelve months, and the run-off by month.
 
-Only what is owed on the as-of date counts; currencies stand apart.
+Only what is owed on the as-of date counts; currencies, and what we owe and are owed, stand apart.
 """
 
-from collections.abc import Callable, Iterator, Sequence
+from collections.abc import Callable, Sequence
 from dataclasses import dataclass, field
 from datetime import date
 
 from tenorbook.basis.conventions import Frequency
 from tenorbook.basis.money import currency_digits
 from tenorbook.calendar.due_dates import DueDates
-from tenorbook.reports.currencies import computed, currencies, ledger_digits, rescaled
+from tenorbook.reports.groups import Group, groups, ledger_digits, members, rescaled
 from tenorbook.reports.result import BookResult, LoanResult
 from tenorbook.reports.words import CAUTION, day
 from tenorbook.tables.sheet import Lines, Part, Sheet
@@ -22,15 +22,15 @@ _BANDS = 5
 """Bands of twelve months after the as-of date; one more takes the rest."""
 
 _MOST_CHARTED = 3
-"""Currencies that get a run-off of their own."""
+"""Groups that get a run-off of their own."""
 
 
 @dataclass(frozen=True, slots=True)
 class RunOff:
-    """The book of one currency over time.
+    """The loans of one group over time.
 
     Attributes:
-        currency: ISO 4217 code.
+        group: currency and side.
         digits: unit of the amounts.
         shown_digits: digits of the currency.
         months: the first of each month from the as-of date on.
@@ -40,7 +40,7 @@ class RunOff:
         principal: paid in each year, extra principal included.
     """
 
-    currency: str
+    group: Group
     digits: int
     shown_digits: int
     months: list[date] = field(default_factory=list)
@@ -51,15 +51,16 @@ class RunOff:
 
 
 def run_offs(result: BookResult, results: Sequence[LoanResult]) -> list[RunOff]:
-    """The run-off of each of the main currencies."""
-    return [_run_off(result.as_of, results, code) for code in currencies(results)[:_MOST_CHARTED]]
+    """The run-off of each of the main groups."""
+    return [_run_off(result.as_of, results, group) for group in groups(results)[:_MOST_CHARTED]]
 
 
-def _run_off(as_of: date, results: Sequence[LoanResult], currency: str) -> RunOff:
-    found = RunOff(currency, ledger_digits(results, currency), currency_digits(currency) or 0)
+def _run_off(as_of: date, results: Sequence[LoanResult], group: Group) -> RunOff:
+    digits = ledger_digits(results, group.currency)
+    found = RunOff(group, digits, currency_digits(group.currency) or 0)
     changes: dict[tuple[int, int], int] = {}
     paid: dict[int, list[int]] = {}
-    for each in _of(results, currency):
+    for each in members(results, group):
         _add_changes(each, found.digits, changes)
         _add_paid(each, found.digits, paid)
     for year in sorted(paid):
@@ -68,10 +69,6 @@ def _run_off(as_of: date, results: Sequence[LoanResult], currency: str) -> RunOf
         found.principal.append(paid[year][1])
     _fill_months(found, as_of, changes)
     return found
-
-
-def _of(results: Sequence[LoanResult], currency: str) -> Iterator[LoanResult]:
-    return (each for each in computed(results) if each.terms and each.terms.currency == currency)
 
 
 def _add_changes(each: LoanResult, digits: int, changes: dict[tuple[int, int], int]) -> None:
@@ -117,7 +114,7 @@ def _fill_months(found: RunOff, as_of: date, changes: dict[tuple[int, int], int]
 
 
 def maturities_sheet(result: BookResult, results: Sequence[LoanResult], back: str) -> Sheet:
-    """Maturities of the loans, a table a currency and kind of band, and what the charts are drawn from.
+    """Maturities of the loans, a table a group and kind of band, and what the charts are drawn from.
 
     Args:
         result: of the book.
@@ -125,12 +122,12 @@ def maturities_sheet(result: BookResult, results: Sequence[LoanResult], back: st
         back: name of the sheet the link at the top leads to.
     """
     parts: list[Part] = []
-    for currency in currencies(results):
-        loans = [each for each in _of(results, currency) if each.position and each.position.balance]
-        digits = ledger_digits(results, currency)
+    for group in groups(results):
+        loans = [each for each in members(results, group) if each.position and each.position.balance]
+        digits = ledger_digits(results, group.currency)
         if loans:
-            parts.append(_bands_table(result.as_of, loans, currency, digits))
-            parts.append(_years_table(result.as_of, loans, currency, digits))
+            parts.append(_bands_table(result.as_of, loans, group, digits))
+            parts.append(_years_table(result.as_of, loans, group, digits))
     for run_off in run_offs(result, results):
         parts += [_paid_table(run_off), _run_off_table(run_off)]
     if not parts:
@@ -146,7 +143,7 @@ def maturities_sheet(result: BookResult, results: Sequence[LoanResult], back: st
     )
 
 
-def _bands_table(as_of: date, loans: list[LoanResult], currency: str, digits: int) -> Table:
+def _bands_table(as_of: date, loans: list[LoanResult], group: Group, digits: int) -> Table:
     """Twelve months after twelve months; a band includes its last day."""
     starts = DueDates.after(as_of, Frequency.YEARLY)
     ends = [starts[number] for number in range(1, _BANDS + 1)]
@@ -156,11 +153,11 @@ def _bands_table(as_of: date, loans: list[LoanResult], currency: str, digits: in
         return next((number for number, end in enumerate(ends) if moment <= end), _BANDS)
 
     spread = [_spread(each, as_of, digits, band, len(headers)) for each in loans]
-    title = f"{currency}: by twelve months"
-    return _maturity_table(f"bands_{currency}", title, loans, headers, spread, digits)
+    title = f"{group.label}: by twelve months"
+    return _maturity_table(f"bands_{group.key}", title, loans, headers, spread, digits)
 
 
-def _years_table(as_of: date, loans: list[LoanResult], currency: str, digits: int) -> Table:
+def _years_table(as_of: date, loans: list[LoanResult], group: Group, digits: int) -> Table:
     """Calendar years; the first is the rest of the as-of date's year."""
     years = [as_of.year + number for number in range(_BANDS + 1)]
     headers = [f"rest of {years[0]}", *map(str, years[1:]), "thereafter"]
@@ -169,8 +166,8 @@ def _years_table(as_of: date, loans: list[LoanResult], currency: str, digits: in
         return min(moment.year - as_of.year, len(years))
 
     spread = [_spread(each, as_of, digits, band, len(headers)) for each in loans]
-    title = f"{currency}: by calendar year"
-    return _maturity_table(f"years_{currency}", title, loans, headers, spread, digits)
+    title = f"{group.label}: by calendar year"
+    return _maturity_table(f"years_{group.key}", title, loans, headers, spread, digits)
 
 
 def _spread(each: LoanResult, as_of: date, digits: int, band: Callable[[date], int], count: int) -> list[int]:
@@ -222,13 +219,13 @@ def _paid_table(run_off: RunOff) -> Table:
     digits, shown = run_off.digits, run_off.shown_digits
     years = Column(key="year", header="Year", role=Role.TEXT, values=[*map(str, run_off.years)], width=18)
     return Table(
-        key=f"paid_{run_off.currency}",
+        key=f"paid_{run_off.group.key}",
         columns=(
             years,
             _amounts("interest", "Interest", run_off.interest, digits, shown),
             _amounts("principal", "Principal", run_off.principal, digits, shown),
         ),
-        title=f"{run_off.currency}: payments by calendar year, over the whole life of the loans",
+        title=f"{run_off.group.label}: payments by calendar year, over the whole life of the loans",
         total_label="Total",
         label_column="year",
     )
@@ -245,5 +242,5 @@ def _run_off_table(run_off: RunOff) -> Table:
         digits=run_off.digits,
         shown_digits=run_off.shown_digits,
     )
-    title = f"{run_off.currency}: balance of the loans by month"
-    return Table(key=f"run_off_{run_off.currency}", columns=(months, balance), title=title)
+    title = f"{run_off.group.label}: balance of the loans by month"
+    return Table(key=f"run_off_{run_off.group.key}", columns=(months, balance), title=title)

@@ -5,8 +5,8 @@ from typing import Any
 
 from tenorbook.basis.conventions import Side
 from tenorbook.basis.money import currency_digits
-from tenorbook.reports.currencies import currencies, ledger_digits, rescaled
 from tenorbook.reports.figures import Figures, figures
+from tenorbook.reports.groups import Group, groups, ledger_digits, rescaled
 from tenorbook.reports.loan_table import TABLE
 from tenorbook.reports.maturities import NAME as MATURITIES
 from tenorbook.reports.maturities import RunOff, run_offs
@@ -199,22 +199,35 @@ def _status(each: LoanResult) -> str:
 
 
 def _totals_table(results: Sequence[LoanResult], rows: Sequence[Figures]) -> Table | None:
-    """What each currency comes to, under the columns of the loans; currencies are never added up."""
-    codes = currencies(results)
-    if not codes:
+    """What each currency and side comes to, under the columns of the loans; they are never added up."""
+    found = groups(results)
+    if not found:
         return None
-    pairs = list(zip(results, rows, strict=True))
-    members = [[row for each, row in pairs if row.currency == code and each.schedule] for code in codes]
-    columns = [_label("what", "Totals by currency", codes, 16), _label("s1", "", [""] * len(codes), 11)]
+    members = [_figures_of(group, results, rows) for group in found]
+    blank = [""] * len(found)
     counts = [f"{len(each):,} loan" + "s" * (len(each) != 1) for each in members]
-    columns += [_label("count", "", counts, 24), _label("s2", "", [""] * len(codes), 10)]
-    columns.append(_label("currency", "Currency", codes, 9))
+    columns = [
+        _label("what", "Totals", [group.label for group in found], 16),
+        _label("s1", "", blank, 11),
+        _label("count", "", counts, 24),
+        _label("side", "Side", [str(group.side) for group in found], 10),
+        _label("currency", "Currency", [group.currency for group in found], 9),
+    ]
     for key, header, attribute in _LAID_OUT:
         if attribute:
-            columns.append(_sums(key, header, attribute, results, codes, members))
+            columns.append(_sums(key, header, attribute, results, found, members))
         else:
-            columns.append(_label(key, "", [""] * len(codes), 10))
-    return Table(key="totals", columns=tuple(columns), tones=dict.fromkeys(range(len(codes)), Tone.SUBTOTAL))
+            columns.append(_label(key, "", blank, 10))
+    return Table(key="totals", columns=tuple(columns), tones=dict.fromkeys(range(len(found)), Tone.SUBTOTAL))
+
+
+def _figures_of(group: Group, results: Sequence[LoanResult], rows: Sequence[Figures]) -> list[Figures]:
+    """The figures of the computed loans of a group."""
+    return [
+        row
+        for each, row in zip(results, rows, strict=True)
+        if each.schedule and each.terms and (row.currency, each.terms.side) == (group.currency, group.side)
+    ]
 
 
 _LAID_OUT = (
@@ -244,17 +257,18 @@ def _sums(
     header: str,
     attribute: str,
     results: Sequence[LoanResult],
-    codes: Sequence[str],
+    found: Sequence[Group],
     members: Sequence[Sequence[Figures]],
 ) -> Column:
-    """One figure, summed a currency at a time by the spreadsheet itself."""
-    digits = [ledger_digits(results, code) for code in codes]
+    """One figure, summed a group at a time by the spreadsheet itself."""
+    digits = [ledger_digits(results, group.currency) for group in found]
     values = [
         sum(rescaled(getattr(row, attribute) or 0, row.digits, wanted) for row in each)
         for each, wanted in zip(members, digits, strict=True)
     ]
+    same_group = "[loans.currency:all],[currency],[loans.side:all],[side]"
     formulas: dict[int, str | None] = {
-        row: f"ROUND(SUMIFS([loans.{key}:all],[loans.currency:all],[currency]),{each})"
+        row: f"ROUND(SUMIFS([loans.{key}:all],{same_group}),{each})"
         for row, each in enumerate(digits)
     }
     return Column(
@@ -264,26 +278,26 @@ def _sums(
         values=values,
         width=_width(values, digits),
         row_digits=digits,
-        row_shown_digits=[currency_digits(code) or 0 for code in codes],
+        row_shown_digits=[currency_digits(group.currency) or 0 for group in found],
         exceptions=formulas,
     )
 
 
 def _charts(run_off: RunOff) -> Charts:
     """The balance by month, and payments by year split into interest and principal."""
-    code, scale = run_off.currency, 10**run_off.digits
+    key, scale = run_off.group.key, 10**run_off.digits
     balance = Series(
-        "Balance", MATURITIES, f"run_off_{code}", "balance", [each / scale for each in run_off.balance]
+        "Balance", MATURITIES, f"run_off_{key}", "balance", [each / scale for each in run_off.balance]
     )
-    months = Series("", MATURITIES, f"run_off_{code}", "month", run_off.months)
-    years = Series("", MATURITIES, f"paid_{code}", "year", [str(each) for each in run_off.years])
+    months = Series("", MATURITIES, f"run_off_{key}", "month", run_off.months)
+    years = Series("", MATURITIES, f"paid_{key}", "year", [str(each) for each in run_off.years])
     parts = [
-        Series(name, MATURITIES, f"paid_{code}", name.lower(), [each / scale for each in values])
+        Series(name, MATURITIES, f"paid_{key}", name.lower(), [each / scale for each in values])
         for name, values in (("Principal", run_off.principal), ("Interest", run_off.interest))
     ]
     return Charts(
         (
-            Chart("line", f"Balance of the book, {code}", months, (balance,)),
-            Chart("stacked column", f"Payments by year, {code}", years, tuple(parts)),
+            Chart("line", f"Balance of the book, {run_off.group.label}", months, (balance,)),
+            Chart("stacked column", f"Payments by year, {run_off.group.label}", years, tuple(parts)),
         )
     )

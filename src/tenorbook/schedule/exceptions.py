@@ -2,8 +2,8 @@
 
 from collections.abc import Iterator
 
-from tenorbook.basis.conventions import Repayment, RowKind
-from tenorbook.basis.money import to_text
+from tenorbook.basis.conventions import ExtraEffect, Repayment, RowKind
+from tenorbook.basis.money import to_words
 from tenorbook.basis.problem import Problem, note, warning
 from tenorbook.schedule.ledger import Schedule
 
@@ -16,19 +16,28 @@ def exceptions_of(schedule: Schedule) -> Iterator[Problem]:
 
 
 def _uncovered_interest(schedule: Schedule) -> Iterator[Problem]:
+    """Payments below the interest due with them: the note's own, or those reduced by paying ahead."""
     if min(schedule.principal) >= 0:
         return
-    payments = zip(schedule.kind, schedule.principal, schedule.date, strict=True)
-    short = [day for kind, principal, day in payments if kind is RowKind.PAYMENT and principal < 0]
-    if short:
-        terms = schedule.terms
-        yield warning(
-            terms.loan_id,
-            terms.loan.place("Payment"),
-            f"{_counted(len(short))} not cover the interest, the first on {short[0]}; what is unpaid is "
-            "added to the balance",
-            "check the payment and the rate",
-        )
+    short = [
+        row
+        for row, (kind, principal) in enumerate(zip(schedule.kind, schedule.principal, strict=True))
+        if kind is RowKind.PAYMENT and principal < 0
+    ]
+    if not short:
+        return
+    terms, first = schedule.terms, schedule.date[short[0]]
+    ahead = any(extra.effect is ExtraEffect.PAY_AHEAD for extra in terms.extras)
+    remedy = "check the payment and the rate"
+    if ahead:
+        remedy = "expected while the loan is paid ahead, unless the note says that unpaid interest is carried"
+    yield warning(
+        terms.loan_id,
+        terms.loan.place("Unpaid interest" if ahead else "Payment"),
+        f"{_counted(len(short))} not cover the interest, the first on {first}; what is unpaid is added "
+        "to the balance",
+        remedy,
+    )
 
 
 def _last_payment(schedule: Schedule) -> Iterator[Problem]:
@@ -40,15 +49,17 @@ def _last_payment(schedule: Schedule) -> Iterator[Problem]:
     expected = level + (terms.balloon or 0)
     if schedule.kind[-1] is not RowKind.PAYMENT or last - expected <= level:
         return
-    shown, digits = to_text(last, terms.digits), terms.digits
-    yield warning(
-        terms.loan_id,
-        terms.loan.place("Balloon"),
-        f"the last payment of {shown} on {schedule.date[-1]} is "
-        f"{to_text(last - expected, digits)} more than the payment of {to_text(level, digits)}: "
-        "what the payments leave falls due with it",
-        "expected where the payment is amortized over a longer time; else check the terms",
+    shown = [to_words(amount, terms.digits) for amount in (last, last - expected, level)]
+    text = (
+        f"the last payment of {shown[0]} on {schedule.date[-1]} is {shown[1]} more than the payment of "
+        f"{shown[2]}: what the payments leave falls due with it"
     )
+    if terms.amortized_over:
+        yield note(terms.loan_id, terms.loan.place("Amortized over"), text)
+    else:
+        yield warning(
+            terms.loan_id, terms.loan.place("Payment"), text, "check the terms if no balloon is meant"
+        )
 
 
 def _decided_term(schedule: Schedule) -> Iterator[Problem]:
@@ -58,7 +69,7 @@ def _decided_term(schedule: Schedule) -> Iterator[Problem]:
         yield note(
             terms.loan_id,
             terms.loan.place("Term"),
-            f"Term is blank: the payment of {to_text(terms.payment or 0, terms.digits)} repays the loan in "
+            f"Term is blank: the payment of {to_words(terms.payment or 0, terms.digits)} repays the loan in "
             f"{number} payments, the last on {schedule.date[-1]}",
         )
 

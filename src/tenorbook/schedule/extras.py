@@ -3,7 +3,7 @@
 import datetime as dt
 
 from tenorbook.basis.conventions import AppliesTo, ExtraEffect, RowKind
-from tenorbook.basis.money import to_text
+from tenorbook.basis.money import to_words
 from tenorbook.schedule.state import State
 from tenorbook.terms.terms import Extra
 
@@ -94,6 +94,6 @@ def _note_cut(state: State, extra: Extra, used: int) -> None:
     digits = state.terms.digits
     state.note(
         extra.place,
-        f"the extra payment of {to_text(extra.amount, digits)} on {extra.date} is more than was left to "
-        f"pay: {to_text(used, digits)} was used",
+        f"the extra payment of {to_words(extra.amount, digits)} on {extra.date} is more than was left to "
+        f"pay: {to_words(used, digits)} was used",
     )

@@ -8,7 +8,7 @@ import datetime as dt
 from collections.abc import Iterator
 
 from tenorbook.basis.conventions import PaymentChange, RowKind
-from tenorbook.basis.money import to_text
+from tenorbook.basis.money import to_words
 from tenorbook.basis.problem import NOWHERE, TermsError, error
 from tenorbook.schedule.due import balloon_payment, scheduled_payment
 from tenorbook.schedule.extras import extras_between_due_dates
@@ -124,13 +124,13 @@ def _boundary(state: State, number: int, day: dt.date) -> None:
 def _never_repaid(state: State) -> TermsError:
     """The end of the calendar is reached with money still owed."""
     terms = state.terms
-    left = to_text(state.balance, terms.digits)
+    left = to_words(state.balance, terms.digits)
     rate = terms.loan.place("Annual rate")
     return TermsError(
         error(
             terms.loan_id,
             terms.loan.place("Payment"),
-            f"the payment of {to_text(state.instalment, terms.digits)} does not repay the loan: after "
+            f"the payment of {to_words(state.instalment, terms.digits)} does not repay the loan: after "
             f"{state.paid:,} payments {left} is still owed",
             "give a higher payment, or the Term or Maturity at which the rest falls due",
             *((rate,) if rate != NOWHERE else ()),

@@ -6,9 +6,12 @@ The original is never written to.
 """
 
 import os
-import tempfile
+import re
+import zipfile
 from collections import defaultdict
 from collections.abc import Iterable, Mapping, Sequence
+from datetime import datetime
+from io import BytesIO
 from pathlib import Path
 from typing import TYPE_CHECKING, Protocol
 
@@ -25,6 +28,8 @@ _AUTHOR = "tenorbook"
 _LOADABLE_BYTES = 30 * 2**20
 """Unpacked size above which a workbook is not loaded whole: formatted blanks cost memory there."""
 _MOST_TEXT = 32_767
+_LONG_AGO = datetime(2000, 1, 1)
+_SAVED_AT = re.compile(rb"(<dcterms:modified[^>]*>)[^<]*")
 _FORMULA_MARKS = ("=", "+", "-", "@", "\t", "\r")
 
 
@@ -94,8 +99,6 @@ def write_checked(
 
 def _loaded(source: Path) -> "Workbook | None":
     """The user's workbook, or `None` where it is none or will not go through loading and saving."""
-    import zipfile
-
     from openpyxl import load_workbook
 
     if source.suffix.lower() not in (".xlsx", ".xlsm"):
@@ -117,6 +120,7 @@ def _rebuilt(sheets: Sequence[PlainSheet]) -> "Workbook":
     if not sheets:
         raise ValueError("a copy of this file needs its plain cells")
     workbook = Workbook()
+    workbook.properties.created = _LONG_AGO
     workbook.remove(workbook.worksheets[0])
     for sheet in sheets:
         worksheet = workbook.create_sheet(_sheet_name(sheet.name))
@@ -195,12 +199,24 @@ def _sentence(problem: Problem) -> str:
 
 
 def _save(workbook: "Workbook", target: Path) -> None:
-    """Whole or not at all: a temporary name in the same folder, then renamed."""
-    handle, temporary = tempfile.mkstemp(prefix=f".{target.stem}-", suffix=".tmp", dir=target.parent)
-    os.close(handle)
+    """Whole or not at all, and the same bytes for the same book: no time of saving is kept."""
+    saved = BytesIO()
+    workbook.save(saved)
+    temporary = target.with_name(f".{target.name}.{os.getpid()}.part")
     try:
-        workbook.save(temporary)
+        _write_timeless(saved, temporary)
         os.replace(temporary, target)
-    except BaseException:
-        Path(temporary).unlink(missing_ok=True)
-        raise
+    finally:
+        temporary.unlink(missing_ok=True)
+
+
+def _write_timeless(saved: BytesIO, target: Path) -> None:
+    """The package again, its parts and properties dated alike in every run."""
+    with zipfile.ZipFile(saved) as package, zipfile.ZipFile(target, "w", zipfile.ZIP_DEFLATED) as copy:
+        for part in package.infolist():
+            content = package.read(part)
+            if part.filename == "docProps/core.xml":
+                content = _SAVED_AT.sub(rb"\g<1>" + f"{_LONG_AGO:%Y-%m-%dT%H:%M:%SZ}".encode(), content)
+            timeless = zipfile.ZipInfo(part.filename)
+            timeless.compress_type = zipfile.ZIP_DEFLATED
+            copy.writestr(timeless, content)

@@ -1,0 +1,1 @@
+"""The command line; the only part of the program that prints."""
