@@ -64,6 +64,12 @@ def test_payment_interest_and_principal(loan: dict[str, object]) -> None:
 
 
 @steady
+def _rest(rate: float, count: int) -> Decimal:
+    """What rounding to 1e-8, half of it for the payment and half for the interest, grows to by the end."""
+    periods = sum((1 + rate) ** k for k in range(count))
+    return max(CLOSE, Decimal(1e-8 * periods))
+
+
 @given(loan=LOANS, share=st.integers(1, 99))
 def test_balloon(loan: dict[str, object], share: int) -> None:
     """The balloon is the principal left by the last payment, as the library's future value.
@@ -84,4 +90,4 @@ def test_balloon(loan: dict[str, object], share: int) -> None:
         assert found.figure("principal", count + 1) == balloon
         assert found.figure("payment", count + 1) == pytest.approx(Decimal(future), abs=CLOSE)
     else:
-        assert found.figure("payment", count) == pytest.approx(level + balloon, abs=CLOSE)
+        assert found.figure("payment", count) == pytest.approx(level + balloon, abs=_rest(rate, count))
