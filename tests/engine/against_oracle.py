@@ -31,6 +31,7 @@ HEADERS = {
     "Payment rounding": "payment_rounding",
     "Interest rounding": "interest_rounding",
     "Month-end": "month_end",
+    "Unpaid interest": "unpaid_interest",
     "Extra each payment": "extra_each_payment",
     "Extra from": "extra_from",
     "Extra until": "extra_until",

@@ -14,6 +14,7 @@ payment, and solving for anything but the term of a given payment.
 from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
+from dataclasses import replace
 from datetime import date
 from decimal import Decimal
 from itertools import pairwise
@@ -23,7 +24,7 @@ from .ledger import Ledger, Row
 from .periods import Periods
 from .terms import Terms, resolve
 
-__all__ = ["schedule"]
+__all__ = ["accrued_interest", "schedule"]
 
 # repeating extras of a loan run until paid off are dated this many due dates past its contract's last
 LONG_AHEAD = 600
@@ -42,19 +43,45 @@ def schedule(
     `schedules.csv`, amounts as `Decimal` with the currency's digits (six more when interest is not rounded).
     Raises `ValueError` for terms that make no schedule.
     """
+    ledger = _ledger(loan, extra_payments, rate_changes)
+    rows = ledger.run()
+    _check(ledger.terms, rows)
+    return _shown(ledger.terms, rows)
+
+
+def accrued_interest(
+    loan: Mapping[str, object],
+    day: date,
+    *,
+    day_counted: bool = True,
+    extra_payments: Sequence[Mapping[str, object]] = (),
+    rate_changes: Sequence[Mapping[str, object]] = (),
+) -> Decimal:
+    """Interest run and not posted after a day's events, that day counted or not; see `schedule`."""
+    ledger = _ledger(loan, extra_payments, rate_changes)
+    if day < ledger.terms.funding:
+        return Decimal(0)
+    return Decimal(ledger.accrued_on(day, day_counted)).scaleb(-ledger.terms.digits)
+
+
+def _ledger(
+    loan: Mapping[str, object],
+    extra_payments: Sequence[Mapping[str, object]],
+    rate_changes: Sequence[Mapping[str, object]],
+) -> Ledger:
+    """The ledger of a loan, before its first row."""
     terms = resolve(loan)
     count = terms.count if terms.count is not None else _solved_count(terms)
     periods = Periods(terms, _maturity(terms, count))
     horizon = terms.grid.due(count + 1 + (LONG_AHEAD if terms.open_ended else 0))
     events = collect(terms, extra_payments, rate_changes, horizon)
-    rows = Ledger(terms, periods, events, count, _implied_balloon(terms, periods, count)).run()
-    _check(terms, rows)
-    return _shown(terms, rows)
+    return Ledger(terms, periods, events, count, _implied_balloon(terms, periods, count))
 
 
 def _solved_count(terms: Terms) -> int:
     """The fewest payments of the given amount that pay the loan off, if nothing else happens."""
-    rows = Ledger(terms, Periods(terms, None), Events(), 0, 0).run()
+    plain = replace(terms, extra_each=0)
+    rows = Ledger(plain, Periods(plain, None), Events(), 0, 0).run()
     return sum(row.kind == "payment" for row in rows)
 
 
@@ -64,7 +91,7 @@ def _implied_balloon(terms: Terms, periods: Periods, count: int) -> int:
     stretched = terms.amortized_over is not None and terms.amortized_over > amortizing
     if terms.payment is None or terms.open_ended or terms.balloon or stretched:
         return 0
-    plain = Ledger(terms, periods, Events(), count, 0)
+    plain = Ledger(replace(terms, extra_each=0), periods, Events(), count, 0)
     plain.run()
     return plain.left_at_end if plain.left_at_end > terms.payment else 0
 

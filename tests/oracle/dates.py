@@ -103,3 +103,10 @@ class Grid:
                 return clipped(month, early)
             return clipped(month, 31 if self.on_month_ends else late)
         return clipped(month + away * self.step.months, 31 if self.on_month_ends else day)
+
+    def number_of(self, day: date) -> int | None:
+        """The number of the due date that falls on `day`; None when there is none."""
+        i = self.number + (day - self.anchor).days * self.step.per_year // 366 - 2
+        while self.due(i) < day:
+            i += 1
+        return i if self.due(i) == day else None

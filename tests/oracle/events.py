@@ -41,8 +41,9 @@ class Events:
         return sorted(set(self.extras) | set(self.rates))
 
 
-def _extra_dates(row: Mapping[str, object], on_month_ends: bool, horizon: date) -> Iterable[date]:
-    """A repeating extra has its own anchor; it keeps to month-ends only where the loan's due dates do."""
+def _extra_dates(row: Mapping[str, object], terms: Terms, horizon: date) -> Iterable[date]:
+    """The dates of one row. Repeated at the loan's own frequency from one of its due dates, an extra goes
+    with the payments; else it has its own anchor, and keeps to month-ends only where the due dates do."""
     first = row["Date"]
     if not isinstance(first, date):
         raise ValueError("an extra payment needs its date")
@@ -51,12 +52,15 @@ def _extra_dates(row: Mapping[str, object], on_month_ends: bool, horizon: date) 
         yield first
         return
     until = row.get("Until")
-    grid = Grid(first, STEPS[str(every)], "auto" if on_month_ends else "no")
-    last_date = until if isinstance(until, date) else horizon
+    last_date = min(until, horizon) if isinstance(until, date) else horizon
     count = None if until is None or isinstance(until, date) else int(str(until))
-    i = 1
-    while grid.due(i) <= min(last_date, horizon) and (count is None or i <= count):
-        yield grid.due(i)
+    grid, start = Grid(first, STEPS[str(every)], "auto" if terms.grid.on_month_ends else "no"), 1
+    if not terms.single and STEPS[str(every)] == terms.grid.step:
+        number = terms.grid.number_of(first)
+        grid, start = (grid, 1) if number is None else (terms.grid, number)
+    i = 0
+    while grid.due(start + i) <= last_date and (count is None or i < count):
+        yield grid.due(start + i)
         i += 1
 
 
@@ -79,7 +83,7 @@ def collect(
             str(row.get("Effect") or "shorten term"),
             row.get("Applies to") == "interest first",
         )
-        for day in _extra_dates(row, terms.grid.on_month_ends, horizon):
+        for day in _extra_dates(row, terms, horizon):
             if day >= terms.funding:
                 events.extras[day].append(extra)
     for row in rate_changes:

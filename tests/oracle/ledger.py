@@ -7,9 +7,9 @@ is carried unrounded.
 
 from __future__ import annotations
 
-from bisect import bisect_left
+from bisect import bisect_right
 from dataclasses import dataclass
-from datetime import date
+from datetime import date, timedelta
 from decimal import Decimal
 from fractions import Fraction
 
@@ -42,6 +42,10 @@ class Row:
         return self.interest + self.principal + self.extra
 
 
+class _StopSignal(Exception):  # noqa: N818 (no error: it ends a run)
+    """The day is reached that a run was to stop on."""
+
+
 class Ledger:
     """One run of one loan.
 
@@ -56,14 +60,14 @@ class Ledger:
         self.count = count
         self.rows: list[Row] = []
         self.event_dates = events.dates()
+        self.stop: tuple[date, bool] | None = None  # a day, and whether its events are still to happen first
         self.balance = 0
         self.rate = terms.rate
         self.rate_before = terms.rate  # over the days accrued last; a change today does not show yet
-        # exact interest accrued and not yet posted
+        # exact interest accrued and not yet posted, less what was paid of it in advance
         self.accrued = Fraction(0)
         self.accrued_odd = Fraction(0)
-        self.prepaid_odd = Fraction(0)
-        self.bearing = Fraction(0)  # accrued interest that bears interest (long first period, compound)
+        self.carried = 0  # interest posted but not covered, which bears none
         # the instalment, and what has changed it
         self.instalment = 0
         self.pending: str | int | None = None
@@ -85,136 +89,137 @@ class Ledger:
         """All rows, from the funding row to the last."""
         self._fund()
         i = 1
-        while self.balance:
+        while self.balance or self.carried:
             if i > MAX_PAYMENTS + 1:
                 raise ValueError("the payment never pays the loan off")
             self._period(i)
             i += 1
         return self.rows
 
+    def accrued_on(self, day: date, day_counted: bool) -> int:
+        """Interest run and not posted after all events of a day, that day itself counted or not, as if it
+        were posted now; negative where more was paid in advance."""
+        self.stop = (day + timedelta(days=1), False) if day_counted else (day, True)
+        try:
+            self.run()
+        except _StopSignal:
+            return self._round(self.accrued) + self._round(self.accrued_odd) + self.carried
+        return 0
+
     def _fund(self) -> None:
-        """The advance, odd days paid on that date, and the first sizing."""
-        terms, periods = self.terms, self.periods
-        for start in sorted(day for day in self.events.rates if day <= terms.funding):
-            change = self.events.rates[start]
-            self.rate = self.rate_before = change.rate
-            self.pending = change.payment if isinstance(change.payment, int) else self.pending
-        rate = Fraction(self.rate)
-        odd = terms.principal * periods.growth(rate, odd_item=True)
-        row = Row("funding", terms.funding, self.rate, 0, terms.principal, draw=terms.principal)
-        if periods.treatment == "pay at funding" and odd:
-            row.interest = self._round(odd)
-            self.prepaid_odd = odd
-        self.rows.append(row)
+        """The advance, odd days paid on that date, and the first sizing; then what else the date brings."""
+        terms, periods, day = self.terms, self.periods, self.terms.funding
+        row = Row("funding", day, self.rate, 0, terms.principal, draw=terms.principal)
+        if periods.treatment == "pay at funding":
+            prepaid = terms.principal * periods.odd_growth(Fraction(self.rate))
+            row.interest = self._round(prepaid)
+            self.accrued_odd = -prepaid
+        self._row(row)
         self.balance = terms.principal
-        # a short first period charged as regular: the days before funding go in, and out in the odd-day item
-        if periods.unearned_days:
-            before = terms.principal * rate
-            self.accrued = before * periods.part(periods.first[0], terms.funding)
-            self.accrued_odd = -before * periods.unearned_days
-        sized_on = terms.principal + (self._round(odd) if periods.treatment == "capitalize" else 0)
-        first = terms.payment if terms.payment is not None else self._sized(sized_on, 0)
-        self.instalment = self.pending if isinstance(self.pending, int) else first
-        self.pending = None
-        if not (terms.advance and terms.grid.due(1) == terms.funding):
-            self._extras(terms.funding)
+        self.instalment = terms.payment if terms.payment is not None else self._sized(0)
+        self._change_rate(day)
+        self._resize(0)
+        if not terms.advance:
+            self._extras(day)
+            self._resize(0)
 
     def _period(self, i: int) -> None:
         """The days up to due date i, and what happens on it."""
         due = self.terms.grid.due(i)
-        stretches = self.periods.of(i)
-        for stretch in stretches:
+        for stretch in self.periods.of(i):
             self._stretch(stretch)
-            if not self.balance:
-                return
-            if stretch is not stretches[-1]:
+            if not self._repaid() and self.terms.funding < stretch.end < due:
                 self._change_rate(stretch.end)
-                self._between_stretches(stretch.end, self._ends_odd_days(stretch))
+                self._capitalize(stretch.end)
                 self._extras(stretch.end)
-                if not self.balance:
-                    return
-        if stretches:
+            if self._repaid():
+                return
+        if due > self.terms.funding:
             self._change_rate(due)
-            if stretches[-1].odd_item:
-                self._between_stretches(due, True)
-        self.bearing = Fraction(0)
         if self.terms.repayment == "at maturity" and i < self.count:
             self._extras(due)
             return
         self._pay(i, due)
-        if self.balance:
-            self._extras(due, self.rows[-1])
-        if self.balance:
+        if not self._repaid():
             self._resize(i)
+
+    def _repaid(self) -> bool:
+        return self.balance == 0 and self.carried == 0
 
     def _stretch(self, stretch: Stretch) -> None:
         """Accrue through a stretch, stopping at every event inside it."""
-        charged = not (stretch.odd_item and self.periods.treatment == "waive")
-        done = self.periods.part(stretch, stretch.opens)
-        at = bisect_left(self.event_dates, stretch.opens)
-        for day in self.event_dates[at:]:
+        at = stretch.start
+        for day in self.event_dates[bisect_right(self.event_dates, max(at, self.terms.funding)) :]:
             if day >= stretch.end:
                 break
-            if day <= stretch.opens:
-                continue
-            upto = self.periods.part(stretch, day)
-            self._accrue(upto - done, stretch.odd_item, charged)
-            done = upto
+            self._accrue(stretch, at, day)
+            at = day
             self._change_rate(day)
             self._extras(day)
-            if not self.balance:
+            if self._repaid():
                 return
-        self._accrue(stretch.whole - done, stretch.odd_item, charged)
+        self._accrue(stretch, at, stretch.end)
 
-    def _accrue(self, fraction: Fraction, odd_item: bool, charged: bool) -> None:
+    def _accrue(self, stretch: Stretch, start: date, end: date) -> None:
+        """Interest from one day of a stretch to another, on the balance and at the rate of now."""
+        if self.stop is not None:
+            day, events_first = self.stop
+            if start >= day:
+                raise _StopSignal
+            if day < end or (day == end and not events_first):
+                self._add_interest(stretch, start, day)
+                raise _StopSignal
+        self._add_interest(stretch, start, end)
+
+    def _add_interest(self, stretch: Stretch, start: date, end: date) -> None:
         self.rate_before = self.rate
-        if not charged:
+        if stretch.odd_item and self.periods.treatment == "waive":
             return
-        growth = Fraction(self.rate) * fraction
-        if odd_item:
-            self.accrued_odd += (self.balance + self.bearing) * growth
+        rate = Fraction(self.rate)
+        growth = self.periods.growth_to(stretch, end, rate)
+        if start > stretch.start:
+            growth -= self.periods.growth_to(stretch, start, rate)
+        interest = self.balance * (-growth if stretch.given_back else growth)
+        if stretch.odd_item:
+            self.accrued_odd += interest
         else:
-            self.accrued += self.balance * growth
-            if self.periods.charged_as_odd:
-                self.accrued_odd += self.bearing * growth
-            else:
-                self.accrued += self.bearing * growth
+            self.accrued += interest
 
-    def _ends_odd_days(self, stretch: Stretch) -> bool:
-        """True at the date one regular period before the first payment (in advance: at the first payment)."""
-        odd = [other for other in self.periods.first if other.odd_item]
-        return bool(odd) and odd[-1] is stretch
-
-    def _between_stretches(self, day: date, odd_ends: bool) -> None:
-        """Inside a long first period: capitalize the odd days where they end; compound what has accrued."""
-        treatment = self.periods.treatment
-        if odd_ends and treatment == "capitalize":
-            amount = self._round(self.accrued_odd)
-            if amount:
-                opening, self.balance = self.balance, self.balance + amount
-                self._row(Row("capitalize", day, self.rate_before, opening, self.balance, amount, -amount))
-            self.accrued_odd = Fraction(0)
-            self.bearing = Fraction(0)
-        elif odd_ends and treatment == "pay at funding":
-            self.bearing = Fraction(0)
-        elif self.terms.compound:
-            self.bearing = self.accrued + self.accrued_odd
+    def _capitalize(self, day: date) -> None:
+        """Where the odd days end: their interest is added to principal, if the note says so."""
+        if self.periods.treatment != "capitalize":
+            return
+        amount = self._round(self.accrued_odd)
+        self.accrued_odd = Fraction(0)
+        if amount:
+            opening, self.balance = self.balance, self.balance + amount
+            self._row(Row("capitalize", day, self.rate_before, opening, self.balance, amount, -amount))
 
     # ------------------------------------------------------------------ payments
 
     def _pay(self, i: int, day: date) -> None:
-        """The scheduled payment of due date i, or the balloon one period after the last one in advance.
+        """The scheduled payment of due date i with the extras paid on that date, or the balloon one period
+        after the last payment in advance.
 
         An interest-only payment in advance prepays the period that begins, on the balance and at the rate of
-        this moment; what an event then changes is settled, unrounded, with the next payment.
+        this moment; what an event then changes is settled, unrounded, with the next payment. An extra that
+        repays all on the same date leaves no period to prepay.
         """
-        terms, opening = self.terms, self.balance
-        prepays = terms.advance and self._is_interest_only(i) and not self.balloon_next
+        prepays = self.terms.advance and self._is_interest_only(i) and not self.balloon_next
         ahead = self.balance * self.periods.factor(i + 1, Fraction(self.rate)) if prepays else Fraction(0)
-        odd_item = self._round(self.accrued_odd - self.prepaid_odd)
+        odd_item = self._round(self.accrued_odd)
+        without_ahead = self._round(self.accrued) + odd_item
         interest = self._round(self.accrued + ahead) + odd_item
-        self.accrued, self.accrued_odd, self.prepaid_odd = -ahead, Fraction(0), Fraction(0)
-        owed = self.balance + interest
+        self.accrued, self.accrued_odd = -ahead, Fraction(0)
+        row = self._settle(i, day, interest + self.carried, odd_item)
+        if row.kind == "payment":
+            self._extras_with(row)
+        if prepays and not self.balance:
+            row.interest += without_ahead - interest
+
+    def _settle(self, i: int, day: date, interest: int, odd_item: int) -> Row:
+        """The row of a payment: what falls due, less what was paid ahead; interest comes first."""
+        opening, owed = self.balance, self.balance + interest
         kind, instalment, final, clears = "payment", owed, True, True
         if self.balloon_next:
             kind = "balloon"
@@ -222,10 +227,14 @@ class Ledger:
             instalment, final, clears = self._instalment(i, interest, odd_item, owed)
         used = 0 if clears else min(self.credit, max(0, instalment))
         self.credit -= used
-        self.balloon_next = terms.advance and final and (used == 0 or self._is_last(i))
-        principal = instalment - used - interest
-        self.balance -= principal
-        self._row(Row(kind, day, self.rate_before, opening, self.balance, interest, principal))
+        self.balloon_next = self.terms.advance and final and (used == 0 or self._is_last(i))
+        paid = instalment - used
+        self.carried = interest - paid if self.terms.carries and paid < interest else 0
+        interest -= self.carried
+        self.balance -= paid - interest
+        row = Row(kind, day, self.rate_before, opening, self.balance, interest, paid - interest)
+        self._row(row)
+        return row
 
     def _is_interest_only(self, i: int) -> bool:
         return self.terms.repayment == "interest only" or i <= self.terms.interest_only
@@ -239,6 +248,9 @@ class Ledger:
         if self._is_last(i) and not self.terms.advance:
             self.left_at_end = max(0, owed - regular)
             return owed, True, True
+        at_balloon = self.terms.open_ended and not self.resized and self.balance <= self.terms.balloon
+        if at_balloon:  # only the balloon is left, or less: now, or in advance one period after the interest
+            return (interest if self.terms.advance else owed), True, False
         if self._is_interest_only(i):
             return interest, self._is_last(i), False
         regular = min(regular, owed)
@@ -263,23 +275,28 @@ class Ledger:
             return regular, True, False
         if not self.balloon:
             return owed, True, True
-        if self.shortened or given or self.balance < self.balloon:
+        if self.shortened or given or owed < self.balloon:
             return regular, True, False
         return owed - self.balloon, True, False
 
     # ------------------------------------------------------------------ sizing
 
-    def _sized(self, balance: int, after: int) -> int:
-        """The instalment sized on `balance` as it stands after due date `after`, at the rate now in force."""
-        terms = self.terms
+    def _sized(self, after: int) -> int:
+        """The instalment sized on the balance as it stands after due date `after`, at the rate now in force.
+
+        Odd-day interest still to be capitalized will be in the balance by the first payment. What is to be
+        left is at most the balance, so that no instalment is below nothing.
+        """
+        terms, rate, balance = self.terms, Fraction(self.rate), self.balance
+        if after == 0 and self.periods.treatment == "capitalize":
+            balance += self._round(balance * self.periods.odd_growth(rate))
         start = max(after, terms.interest_only)
         payments = terms.interest_only + self.amortizing - start
-        left = self.terms.balloon if self.stretched else self.balloon
+        left = min(self.terms.balloon if self.stretched else self.balloon, balance)
         if terms.repayment == "level principal":
             return level_principal(balance, left, payments, terms.payment_rounding)
         if terms.repayment != "level payment":
             return 0
-        rate = Fraction(self.rate)
         if terms.equal_basis:
             factors = [rate / terms.per_year] * payments
         else:
@@ -289,72 +306,88 @@ class Ledger:
         return level_payment(balance, left, factors, terms.payment_rounding)
 
     def _resize(self, i: int) -> None:
-        """After all of due date i: the new instalment that an extra payment or a rate change asked for."""
+        """After all of due date i (0: of the funding date): the new instalment that an extra payment or a
+        rate change asked for."""
         pending, self.pending = self.pending, None
-        if pending is None:
+        if pending is None or self._repaid():
             return
         if isinstance(pending, int):
             self.instalment = pending
         elif max(i, self.terms.interest_only) < self.terms.interest_only + self.amortizing:
-            self.instalment = self._sized(self.balance, i)
+            self.instalment = self._sized(i)
             self.resized = True
 
     # ------------------------------------------------------------------ events
 
     def _change_rate(self, day: date) -> None:
+        """A rate change of this day: its row still shows the rate of the days before it."""
         change: RateChange | None = self.events.rates.get(day)
-        if change is None or day <= self.terms.funding:
+        if change is None:
             return
         self._row(Row("rate", day, self.rate_before, self.balance, self.balance))
         self.rate = change.rate
         if change.payment != "keep":
             self.pending = change.payment
 
-    def _extras(self, day: date, payment_row: Row | None = None) -> None:
-        """The extra payments of a date: in the payment's row when there is one, else in their own row."""
-        due = list(self.events.extras.get(day, ()))
-        terms = self.terms
-        in_window = (terms.extra_from or day) <= day <= (terms.extra_until or day)
-        if payment_row is not None and payment_row.kind == "payment" and terms.extra_each and in_window:
-            due.insert(0, Extra(terms.extra_each, "shorten term", interest_first=False))
-        row = payment_row or Row("extra", day, self.rate_before, self.balance, self.balance)
-        for extra in due:
-            if not self.balance:
+    def _extras(self, day: date) -> None:
+        """The extra payments of a date without a scheduled payment, in a row of their own."""
+        row = Row("extra", day, self.rate_before, self.balance, self.balance)
+        for extra in self.events.extras.get(day, ()):
+            if self._repaid():
                 break
-            interest, principal = self._apply_extra(extra)
-            row.interest += interest
-            row.extra += principal
-            row.closing = self.balance
-        if payment_row is None and due and (row.interest or row.extra):
+            self._take(extra, row, self._round(self.accrued) + self._round(self.accrued_odd))
+        row.closing = self.balance
+        if row.interest or row.extra:
             self._row(row)
 
-    def _apply_extra(self, extra: Extra) -> tuple[int, int]:
-        """(interest, principal) that one extra payment pays; more than the payoff amount is cut off."""
-        accrued = self._round(self.accrued) + self._round(self.accrued_odd - self.prepaid_odd)
-        interest, principal = 0, extra.amount
-        if extra.amount >= max(self.balance, self.balance + accrued):
-            interest, principal = accrued, self.balance
+    def _extras_with(self, row: Row) -> None:
+        """The extra payments made with a scheduled payment. It has settled the interest of its date, but for
+        what is carried unpaid: an extra that clears the loan, or pays interest first, pays that as well."""
+        due = list(self.events.extras.get(row.day, ()))
+        terms = self.terms
+        if terms.extra_each and (terms.extra_from or row.day) <= row.day <= (terms.extra_until or row.day):
+            due.insert(0, Extra(terms.extra_each, "shorten term", interest_first=False))
+        for extra in due:
+            self._take(extra, row, 0)
+        row.closing = self.balance
+
+    def _interest_taken(self, extra: Extra, accrued: int) -> int:
+        """The interest that an extra payment pays: all of it where it clears the loan."""
+        owed = accrued + self.carried
+        if extra.amount >= max(self.balance, self.balance + owed):
+            interest = owed
         elif extra.interest_first or extra.amount >= self.balance:
-            interest = min(extra.amount, max(accrued, 0))
-            principal = extra.amount - interest
-            self._take_interest(interest, paid_in_full=0 < interest == accrued)
+            interest = min(extra.amount, max(owed, 0))
+        else:
+            return 0
+        from_carried = min(self.carried, max(interest, 0))
+        self.carried -= from_carried
+        if interest != from_carried:
+            self._take_accrued(interest - from_carried, accrued)
+        return interest
+
+    def _take_accrued(self, interest: int, accrued: int) -> None:
+        """Interest paid inside a period. Paid to the day it is posted, and accrual starts anew at nothing;
+        a part payment is whole units off the exact amounts, odd days first."""
+        if interest == accrued:
+            self.accrued = self.accrued_odd = Fraction(0)
+            return
+        from_odd = min(interest, max(0, self._round(self.accrued_odd)))
+        self.accrued_odd -= from_odd
+        self.accrued -= interest - from_odd
+
+    def _take(self, extra: Extra, row: Row, accrued: int) -> None:
+        """One extra payment into its row, at most what is left; and what it does to instalments."""
+        interest = self._interest_taken(extra, accrued)
+        principal = min(extra.amount - interest, self.balance)
+        row.interest += interest
+        row.extra += principal
         self.balance -= principal
         self.shortened = self.shortened or extra.effect == "shorten term"
         if extra.effect == "lower payment":
             self.pending = RE_AMORTIZE
         elif extra.effect == "pay ahead":
             self.credit += interest + principal
-        return interest, principal
-
-    def _take_interest(self, interest: int, paid_in_full: bool) -> None:
-        """Interest paid inside a period. Paid to the day it is posted, and accrual starts anew at nothing."""
-        if paid_in_full:
-            self.accrued = self.accrued_odd = self.prepaid_odd = self.bearing = Fraction(0)
-            return
-        from_odd = min(Fraction(interest), max(Fraction(0), self.accrued_odd - self.prepaid_odd))
-        self.accrued_odd -= from_odd
-        self.accrued -= interest - from_odd
-        self.bearing = max(Fraction(0), self.bearing - interest)
 
     # ------------------------------------------------------------------ small things
 

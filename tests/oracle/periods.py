@@ -1,8 +1,8 @@
 """Accrual periods: how much of a year each one counts, and how much of it has run on any day inside.
 
-A due period is one or more stretches. All but the first are one regular stretch. A long first period is its
-odd days, then as many whole regular stretches as fit before the first payment; a short one is all odd days,
-unless the note charges it as a regular period less the days before funding.
+A due period is one stretch, except that the first period of a loan whose note treats odd days apart is two:
+the odd days, and one regular period. A stretch is counted as a whole; what happens inside it is counted from
+the stretch's start, so that its parts add up to the whole.
 """
 
 from __future__ import annotations
@@ -21,14 +21,29 @@ class Stretch:
     """One counted stretch, start counted, end not.
 
     whole: its fraction of a year; odd_item: its interest is the odd-day item, posted and rounded by itself;
-    opens: the day interest starts to run, after `start` only in a short first period charged as regular.
+    given_back: it is the days before funding that a short first period lacks, and its interest is taken off;
+    compounding: the regular periods that compound in it (none: simple interest on the whole); odd: the days
+    before them, which stay simple; through: the regular period after the stretch through which its interest
+    compounds too, that period's own interest being left out.
     """
 
     start: date
     end: date
     whole: Fraction
-    odd_item: bool
-    opens: date
+    odd_item: bool = False
+    given_back: bool = False
+    compounding: tuple[Fraction, ...] = ()
+    odd: Fraction = Fraction(0)
+    through: Fraction = Fraction(0)
+
+    def growth(self, rate: Fraction) -> Fraction:
+        """Interest on 1 over the whole stretch, at one rate: (1+i)^k (1+odd) - 1 where periods compound."""
+        if not self.compounding and not self.through:
+            return rate * self.whole
+        grown = (1 + rate * self.odd) * (1 + rate * self.through)
+        for period in self.compounding:
+            grown *= 1 + rate * period
+        return grown - 1 - rate * self.through
 
 
 class Periods:
@@ -49,106 +64,108 @@ class Periods:
         default = "Actual/365 Fixed" if terms.day_count == "Equal periods" else terms.day_count
         return terms.odd_day_count or default
 
-    def _odd(self, start: date, end: date, odd_item: bool) -> Stretch:
-        return Stretch(start, end, self._by_dates(self._odd_name(), start, end, start, end), odd_item, start)
+    def _odd_days(self, start: date, end: date) -> Fraction:
+        return self._by_dates(self._odd_name(), start, end, start, end)
 
-    def _regular(self, i: int, odd_item: bool = False) -> Stretch:
-        """Regular stretch number i, from due date i-1 to due date i."""
+    def _regular(self, i: int) -> Fraction:
+        """The fraction of regular period number i, from due date i-1 to due date i."""
         terms = self.terms
-        start, end = terms.grid.due(i - 1), terms.grid.due(i)
         if terms.day_count == "Equal periods" or (terms.day_count == "30/360" and terms.grid.step.of_months):
-            whole = Fraction(1, terms.per_year)
-        else:
-            whole = self._by_dates(terms.day_count, start, end, start, end)
-        return Stretch(start, end, whole, odd_item, start)
+            return Fraction(1, terms.per_year)
+        start, end = terms.grid.due(i - 1), terms.grid.due(i)
+        return self._by_dates(terms.day_count, start, end, start, end)
 
-    def part(self, stretch: Stretch, x: date) -> Fraction:
-        """What has run from the stretch's start to x: the whole at its end, before by the odd-day count."""
+    def growth_to(self, stretch: Stretch, x: date, rate: Fraction) -> Fraction:
+        """Interest on 1 from the stretch's start to x, at one rate: the stretch's growth at its end; before
+        that the odd-day count by dates (or, for equal periods, the stretch by its days), always simple."""
         if x >= stretch.end:
-            return stretch.whole
-        if x <= stretch.start:
-            return Fraction(0)
+            return stretch.growth(rate)
         if self.terms.day_count == "Equal periods" and self.terms.odd_day_count is None:
-            return stretch.whole * Fraction((x - stretch.start).days, (stretch.end - stretch.start).days)
-        return self._by_dates(self._odd_name(), stretch.start, x, stretch.start, stretch.end)
+            return (
+                rate * stretch.whole * Fraction((x - stretch.start).days, (stretch.end - stretch.start).days)
+            )
+        return rate * self._by_dates(self._odd_name(), stretch.start, x, stretch.start, stretch.end)
 
     @cached_property
-    def charged_as_odd(self) -> bool:
-        """True when the first period's odd days are an item of their own (any treatment but `accrue`)."""
-        return self.terms.first_period != "accrue" and not self.terms.single
+    def is_regular(self) -> bool:
+        """True when the first period is one regular period, or (in advance) no time at all."""
+        return not self.terms.single and (self.terms.advance or self.terms.funding == self.terms.grid.due(0))
 
     @cached_property
     def is_short(self) -> bool:
         """True when less than one regular period runs from funding to the first payment in arrears."""
-        terms = self.terms
-        return not terms.single and not terms.advance and terms.funding > terms.grid.due(0)
+        return not self.terms.single and not self.is_regular and self.terms.funding > self.terms.grid.due(0)
 
     @cached_property
     def treatment(self) -> str:
         """The first-period treatment in effect: a short period has nothing to pay, capitalize or waive."""
-        return "add to first payment" if self.is_short and self.charged_as_odd else self.terms.first_period
-
-    @cached_property
-    def unearned_days(self) -> Fraction:
-        """Short first period charged as regular: the fraction of a year before funding, to be taken off."""
-        if not (self.is_short and self.charged_as_odd):
-            return Fraction(0)
-        start = self.terms.grid.due(0)
-        return self._by_dates(self._odd_name(), start, self.terms.funding, start, self.terms.grid.due(1))
+        asked = self.terms.first_period
+        if self.is_regular or self.terms.single or asked == "accrue":
+            return "accrue"
+        return "add to first payment" if self.is_short else asked
 
     @cached_property
     def first(self) -> list[Stretch]:
         """The stretches from funding to the first payment; none when both fall on one date (in advance)."""
         terms, due = self.terms, self.terms.grid.due
+        if terms.advance:
+            return []
         if terms.single:
-            return self._single()
+            return [self._single()]
+        regular = Stretch(due(0), due(1), self._regular(1))
+        if self.is_regular:
+            return [regular]
+        if self.treatment == "accrue":
+            if self.is_short:
+                return [Stretch(terms.funding, due(1), self._odd_days(terms.funding, due(1)))]
+            return [self._counted_back(1, terms.compound)]
         if self.is_short:
-            if not self.charged_as_odd:
-                return [self._odd(terms.funding, due(1), False)]
-            regular = self._regular(1)
-            return [Stretch(regular.start, regular.end, regular.whole, False, terms.funding)]
-        whole_from = 1  # due-date number of the earliest whole period's start
-        while due(whole_from - 1) >= terms.funding:
-            whole_from -= 1
-        stretches = []
-        if due(whole_from) > terms.funding:
-            stretches.append(self._odd(terms.funding, due(whole_from), self.charged_as_odd))
-        for i in range(whole_from + 1, 2):
-            is_last = i == 1 and not terms.advance
-            stretches.append(self._regular(i, self.charged_as_odd and not is_last))
-        return stretches
+            missing = self._odd_days(due(0), terms.funding)
+            return [Stretch(due(0), terms.funding, missing, odd_item=True, given_back=True), regular]
+        return [self._odd_stretch(regular.whole), regular]
 
-    def _single(self) -> list[Stretch]:
-        """The one period of a loan paid at maturity."""
+    def _odd_stretch(self, regular: Fraction) -> Stretch:
+        """From funding to one regular period before the first payment, as an item of its own.
+
+        Paid with the first payment, compound interest runs on it through the regular period as well.
+        """
+        days = self._counted_back(0, self.terms.compound)
+        through = regular if self.terms.compound and self.treatment == "add to first payment" else Fraction(0)
+        return Stretch(days.start, days.end, days.whole, True, False, days.compounding, days.odd, through)
+
+    def _counted_back(self, last: int, compound: bool) -> Stretch:
+        """From funding to due date `last`: whole regular periods counted back, then the odd days."""
+        due, funding = self.terms.grid.due, self.terms.funding
+        back = last
+        while due(back - 1) >= funding:
+            back -= 1
+        periods = tuple(self._regular(i) for i in range(back + 1, last + 1))
+        odd = self._odd_days(funding, due(back)) if due(back) > funding else Fraction(0)
+        whole = odd + sum(periods)
+        if not compound:
+            return Stretch(funding, due(last), whole)
+        return Stretch(funding, due(last), whole, compounding=periods, odd=odd)
+
+    def _single(self) -> Stretch:
+        """The one period of a loan paid at maturity: years counted back where the count is by periods."""
         terms = self.terms
         start, end = terms.funding, terms.grid.due(1)
-        if terms.day_count != "Equal periods":
-            if terms.day_count == "30/360" and terms.whole_months is not None:
-                return [Stretch(start, end, Fraction(terms.whole_months, 12), False, start)]
-            whole = self._by_dates(terms.day_count, start, end, start, end)
-            return [Stretch(start, end, whole, False, start)]
-        years = 1
-        while terms.grid.due(years - 1) >= start:
-            years -= 1
-        odd = [self._odd(start, terms.grid.due(years), False)] if terms.grid.due(years) > start else []
-        return odd + [self._regular(i) for i in range(years + 1, 2)]
+        if terms.day_count in ("Equal periods", "Actual/Actual ICMA"):
+            return self._counted_back(1, compound=False)
+        if terms.day_count == "30/360" and terms.whole_months is not None:
+            return Stretch(start, end, Fraction(terms.whole_months, 12))
+        return Stretch(start, end, self._by_dates(terms.day_count, start, end, start, end))
 
     def of(self, i: int) -> list[Stretch]:
         """The stretches of due period i (the one that ends on due date i)."""
-        return self.first if i == 1 else [self._regular(i)]
+        if i == 1:
+            return self.first
+        return [Stretch(self.terms.grid.due(i - 1), self.terms.grid.due(i), self._regular(i))]
 
-    def growth(self, rate: Fraction, odd_item: bool) -> Fraction:
-        """Interest per unit over the first period's stretches of one kind, simple or compounding."""
-        stretches = [stretch for stretch in self.first if stretch.odd_item == odd_item]
-        if not self.terms.compound:
-            return rate * sum((stretch.whole for stretch in stretches), Fraction(0))
-        grown = Fraction(1)
-        for stretch in stretches:
-            grown *= 1 + rate * stretch.whole
-        return grown - 1
+    def odd_growth(self, rate: Fraction) -> Fraction:
+        """Interest on 1 over the odd days that are an item of their own; 0 when there are none."""
+        return sum((stretch.growth(rate) for stretch in self.first if stretch.odd_item), Fraction(0))
 
     def factor(self, i: int, rate: Fraction) -> Fraction:
         """Interest per unit of balance over period i, as a level payment is sized to meet it."""
-        if i == 1:
-            return self.growth(rate, odd_item=False)
-        return rate * self._regular(i).whole
+        return sum((stretch.growth(rate) for stretch in self.of(i) if not stretch.odd_item), Fraction(0))

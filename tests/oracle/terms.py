@@ -40,6 +40,7 @@ class Terms:
     equal_basis: bool
     payment_rounding: PaymentRounding
     interest_rounding: str
+    carries: bool  # interest that a payment does not cover is kept apart, bearing none
     extra_each: int
     extra_from: date | None
     extra_until: date | None
@@ -145,8 +146,9 @@ def _dated(
     first = _day(loan, "First payment")
     if first is not None:
         grid = Grid(first, step, month_end)
-        if funding is None:
-            funding = grid.due(1 if advance else 0)
+        funding = funding or grid.due(1 if advance else 0)
+        if advance and funding != first:
+            raise ValueError("in advance the first payment is due on the funding date")
         return funding, grid
     if funding is None:
         raise ValueError("neither funding date nor first payment")
@@ -191,8 +193,8 @@ def resolve(loan: Mapping[str, object]) -> Terms:
     repayment = "at maturity" if single else _text(loan, "Repayment", "level payment")
     if advance and repayment == "at maturity":
         raise ValueError("a loan due at maturity has no payments in advance")
-    if grid.due(1) < funding:
-        raise ValueError("first payment before funding")
+    if grid.due(1) < funding or (grid.due(1) == funding and not advance):
+        raise ValueError("first payment not after funding")
     payment, balloon, over = loan.get("Payment"), loan.get("Balloon"), loan.get("Amortized over")
     interest_only = int(str(loan.get("Interest-only payments") or 0))
     if count is not None and repayment.startswith("level") and interest_only >= count:
@@ -221,6 +223,7 @@ def resolve(loan: Mapping[str, object]) -> Terms:
         equal_basis=_text(loan, "Payment basis", "as accrued") == "equal periods",
         payment_rounding=payment_rounding(_text(loan, "Payment rounding", "nearest"), digits, scale),
         interest_rounding=interest_rounding,
+        carries=_text(loan, "Unpaid interest", "add to balance") == "carry",
         extra_each=to_units(loan.get("Extra each payment") or 0, digits),
         extra_from=_day(loan, "Extra from"),
         extra_until=_day(loan, "Extra until"),

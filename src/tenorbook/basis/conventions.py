@@ -227,10 +227,7 @@ class Timing(Documented):
     """When in its period a payment falls."""
 
     ARREARS = "arrears", Doc("At the end of each period.", also=("ordinary annuity",))
-    ADVANCE = (
-        "advance",
-        Doc("At the start of each period; the first on the funding date.", also=("annuity due",)),
-    )
+    ADVANCE = "advance", Doc("At the start of each period, from the funding date.", also=("annuity due",))
 
 
 class Repayment(Documented):
@@ -330,10 +327,7 @@ class InterestRounding(Documented):
 class MonthEnd(Documented):
     """Whether due dates stick to the end of the month."""
 
-    AUTO = (
-        "auto",
-        Doc("Month-ends when the first payment falls on the last day of its month."),
-    )
+    AUTO = "auto", Doc("Month-ends when the first payment falls on the last day of its month.")
     YES = "yes", Doc("Every due date is the last day of its month.")
     NO = "no", Doc("The first payment's day number, where the month has it.")
 
@@ -367,10 +361,7 @@ class AppliesTo(Documented):
     """What an extra payment pays first."""
 
     PRINCIPAL = "principal", Doc("Principal, all of it.")
-    INTEREST_FIRST = (
-        "interest first",
-        Doc("The interest accrued to its date, then principal.", source="United States Rule"),
-    )
+    INTEREST_FIRST = "interest first", Doc("Interest accrued to its date, then principal.", source="US Rule")
 
 
 class PaymentChange(Documented):

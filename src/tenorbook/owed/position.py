@@ -46,4 +46,4 @@ def position(schedule: Schedule, as_of: date, counted: bool = True) -> Position:
     within = bisect_right(schedule.date, year_on)
     due = sum(schedule.principal[reached:within]) + sum(schedule.extra[reached:within])
     until = as_of + timedelta(1) if counted else as_of
-    return Position(as_of, balance, accrued_interest(schedule, until), due, balance - due)
+    return Position(as_of, balance, accrued_interest(schedule, until, not counted), due, balance - due)

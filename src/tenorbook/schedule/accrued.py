@@ -1,7 +1,7 @@
 """Interest accrued between two postings, read off a finished schedule by its own steps."""
 
 from bisect import bisect_left, bisect_right
-from datetime import date
+from datetime import date, timedelta
 from decimal import Decimal
 
 from tenorbook.basis.conventions import FirstPeriod, RowKind
@@ -11,26 +11,27 @@ from tenorbook.schedule.steps import Steps, make_steps
 from tenorbook.terms.terms import Terms
 
 
-def accrued_interest(schedule: Schedule, until: date) -> int:
+def accrued_interest(schedule: Schedule, until: date, after_events: bool = False) -> int:
     """Interest accrued and unpaid before a day, each item rounded once, in the ledger's unit.
 
     Args:
         schedule: of the loan.
-        until: the first day that does not accrue. Events on that day have not happened yet.
+        until: the first day that does not accrue.
+        after_events: whether the events of that day have happened.
 
     Returns:
         0 before funding and after the last row; negative where interest was paid in advance.
     """
-    if not schedule.date[0] < until <= schedule.date[-1]:
+    if until < schedule.date[0] or until > schedule.date[-1] - timedelta(after_events):
         return 0
     steps = make_steps(schedule.terms, schedule.date[-1])
-    period = bisect_left(steps.boundaries, until)
+    period = max(1, (bisect_right if after_events else bisect_left)(steps.boundaries, until))
     accrual = Accrual(steps, schedule.terms.interest_rounding)
     first = 1 if schedule.terms.one_payment else period
     _take_off_prepaid(schedule, steps, accrual, first)
     row = bisect_right(schedule.date, steps.boundaries[first - 1]) - 1
     for number in range(first, period + 1):
-        row = _run_period(schedule, steps, accrual, number, row, until)
+        row = _run_period(schedule, steps, accrual, number, row, until, after_events)
     return accrual.due() + schedule.carried.get(row, 0)
 
 
@@ -48,13 +49,13 @@ def _take_off_prepaid(schedule: Schedule, steps: Steps, accrual: Accrual, period
 
 
 def _run_period(
-    schedule: Schedule, steps: Steps, accrual: Accrual, number: int, row: int, until: date
+    schedule: Schedule, steps: Steps, accrual: Accrual, number: int, row: int, until: date, after_events: bool
 ) -> int:
     """Accrues through one period, or the part of it before `until`; returns the last row passed."""
     terms, spans = schedule.terms, steps.spans(number)
     end = min(until, steps.boundaries[number])
     accrual.start_period()
-    while schedule.date[row + 1] < end:
+    while schedule.date[row + 1] < end + timedelta(after_events and end == until):
         rate = rate_on(terms, schedule.date[row])
         accrual.run_to(spans, schedule.date[row + 1], schedule.closing[row], row, rate)
         row += 1

@@ -21,11 +21,13 @@ def scheduled_payment(state: State, day: dt.date, period_ahead: int) -> None:
     ahead = _interest_ahead(state, period_ahead)
     if ahead is not None:
         state.accrual.add(ahead)
+    due_with_ahead = state.accrual.due()
     interest, principal = _split(state, state.owed_interest())
-    extra = extras_on_due_date(state, day, state.balance - principal)
+    unpaid, extra = extras_on_due_date(state, day, state.balance - principal)
+    interest += unpaid
     if ahead is not None and principal + extra == state.balance:
         state.accrual.settle(ahead)  # repaid today: there is no period to come
-        interest, ahead = state.owed_interest(), None
+        interest, ahead = interest + state.accrual.due() - due_with_ahead, None
     parts = state.accrual.posted_parts()
     state.add_row(RowKind.PAYMENT, day, interest=interest, principal=principal, extra=extra, parts=parts)
     state.paid += 1
@@ -64,9 +66,10 @@ def _split(state: State, interest: int) -> tuple[int, int]:
     """
     owed = state.balance + interest
     due, used = _falls_due(state, interest, owed), 0
-    if due < owed:
+    if due < owed or not is_last(state):
         used = min(state.ahead, max(0, due))
         state.ahead -= used
+        state.balloon_next = state.balloon_next and (not used or is_last(state))
     principal = due - used - interest
     if principal >= 0 or not state.carries_interest():
         state.carried = 0
@@ -124,7 +127,7 @@ def _last_in_advance(state: State, regular: int, owed: int) -> int:
     given = terms.payment is not None and not state.resized
     open_ended = terms.count is None and not state.resized
     if open_ended:
-        return owed - balloon
+        return max(owed - balloon, owed - state.balance)
     if terms.amortized_over or (given and (terms.balloon or left > regular)):
         return regular
     if not balloon:

@@ -63,18 +63,30 @@ def _take_interest(state: State, interest: int, row: int) -> None:
         state.accrual.paid_rows.append(row)
 
 
-def extras_on_due_date(state: State, day: dt.date, balance: int) -> int:
-    """Extra principal paid together with a scheduled payment that leaves `balance`."""
-    terms, total = state.terms, 0
+def extras_on_due_date(state: State, day: dt.date, balance: int) -> tuple[int, int]:
+    """Interest carried unpaid and extra principal, paid with a scheduled payment that leaves `balance`."""
+    terms, interest, total = state.terms, 0, 0
     if terms.each_payment and terms.each_from <= day <= terms.each_until:
-        total = min(terms.each_payment, balance)
+        interest = _carried_taken(state, terms.each_payment, False, balance)
+        total = min(terms.each_payment - interest, balance)
         state.reduced = True
     for extra in _take(state, day):
-        used = min(extra.amount, balance - total)
-        total += used
-        _note_cut(state, extra, used)
-        _apply_effect(state, extra.effect, extra.date, used)
-    return total
+        first = extra.applies_to is AppliesTo.INTEREST_FIRST
+        taken = _carried_taken(state, extra.amount, first, balance - total)
+        used = min(extra.amount - taken, balance - total)
+        interest, total = interest + taken, total + used
+        _note_cut(state, extra, taken + used)
+        _apply_effect(state, extra.effect, extra.date, taken + used)
+    return interest, total
+
+
+def _carried_taken(state: State, amount: int, interest_first: bool, balance: int) -> int:
+    """The unpaid interest that an extra pays on a due date: all of it where it clears the loan."""
+    if not (interest_first or amount >= balance):
+        return 0
+    taken = min(amount, state.carried)
+    state.carried -= taken
+    return taken
 
 
 def _apply_effect(state: State, effect: ExtraEffect, day: dt.date, amount: int) -> None:

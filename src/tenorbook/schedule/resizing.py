@@ -14,7 +14,8 @@ def size_at_funding(state: State) -> None:
         state.set_instalment(terms.payment, "given by the note")
     elif terms.repayment in _SIZED:
         balance = state.balance + still_to_capitalize(state)
-        amount = state.sizer.amount(balance, _balloon_to_leave(state), state.rate, 0)
+        left = min(_balloon_to_leave(state), balance)
+        amount = state.sizer.amount(balance, left, state.rate, 0)
         state.set_instalment(amount, "solved")
 
 

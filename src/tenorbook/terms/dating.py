@@ -147,7 +147,8 @@ def _single_payment(loan: Loan, findings: Findings) -> tuple[date, DueDates] | N
         return None
     if len(set(days.values())) > 1:
         said = ", ".join(f"{header} says {day}" for header, day in days.items())
-        findings.error(next(iter(days)), f"the one payment has several dates: {said}", "keep one", *days)
+        first, *others = days
+        findings.error(first, f"the one payment has several dates: {said}", "keep one", *others)
         return None
     maturity = next(iter(days.values()))
     if maturity <= funding:
@@ -216,15 +217,15 @@ def _by_maturity(maturity: date, due: DueDates, findings: Findings) -> int | Non
 
 
 def _within_bounds(loan: Loan, funding: date, due: DueDates, count: int, findings: Findings) -> bool:
-    years = (due[count] - funding).days / 365.25
+    quarter_days = 4 * (due[count] - funding).days  # a year has 1,461 of them
     header = "Term" if loan.term else "Maturity"
-    if years > MOST_YEARS:
+    if quarter_days > 1461 * MOST_YEARS:
         findings.error(
             header,
             f"the last payment, {due[count]}, is more than {MOST_YEARS} years after funding",
             "correct it",
         )
         return False
-    if years > DOUBTFUL_YEARS:
+    if quarter_days > 1461 * DOUBTFUL_YEARS:
         findings.warning(header, f"the loan runs more than {DOUBTFUL_YEARS} years, to {due[count]}")
     return True

@@ -25,7 +25,7 @@ from tenorbook.terms.findings import Findings
 from tenorbook.terms.happenings import check_rate, settle_extras, settle_repricings
 from tenorbook.terms.lengths import payments_in
 from tenorbook.terms.loan import Length, Loan, PaymentStep
-from tenorbook.terms.terms import Terms
+from tenorbook.terms.terms import Extra, Repricing, Terms
 
 NO_PAYMENT = (Repayment.INTEREST_ONLY, Repayment.AT_MATURITY)
 
@@ -140,22 +140,20 @@ class _Resolution:
             each_payment=self._each_payment(),
             each_from=loan.extra_from or date.min,
             each_until=loan.extra_until or date.max,
-            extras=settle_extras(
-                loan.extra_payments,
-                self.ledger,
-                self.dating.funding,
-                self._last_day(),
-                self.dating.due,
-                self.findings,
-            ),
-            repricings=settle_repricings(
-                loan.rate_changes,
-                self.ledger,
-                self.dating.funding,
-                self._payment_after_repricing(),
-                self.findings,
-            ),
+            extras=self._extras(),
+            repricings=self._repricings(),
         )
+
+    def _extras(self) -> tuple[Extra, ...]:
+        dating = self.dating
+        return settle_extras(
+            self.loan.extra_payments, self.ledger, dating.funding, self._last_day(), dating.due, self.findings
+        )
+
+    def _repricings(self) -> tuple[Repricing, ...]:
+        default = self._payment_after_repricing()
+        changes, funding = self.loan.rate_changes, self.dating.funding
+        return settle_repricings(changes, self.ledger, funding, default, self.findings)
 
     def _payment(self) -> int | None:
         loan = self.loan
@@ -179,7 +177,8 @@ class _Resolution:
         return payment
 
     def _settled_count(self, payment: int | None) -> int | None:
-        if self.dating.count is None and payment is None:
+        blank = self.loan.term is None and self.loan.maturity is None
+        if self.dating.count is None and payment is None and blank:
             self.findings.error(
                 "Term",
                 "Term and Maturity are blank, and no payment is given that would settle them",
