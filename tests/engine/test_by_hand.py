@@ -155,12 +155,12 @@ def test_an_extra_pays_ahead() -> None:
 
 
 def test_paying_ahead_with_less_than_a_payment_left() -> None:
-    """The instalments are reduced until the amount is used up, also when less than one is left to pay."""
-    # 1 February: 9,044.63 - 8,000 = 1,044.63, two payments and 1,849.26 ahead. Nothing falls due on 1 March
-    # (10.45 is added: 1,055.08) and on 1 April (10.55: 1,065.63); on 1 May all is: x 1.01 = 1,076.29
+    """Principal is paid ahead, interest is not: it goes on being paid until the last payment clears."""
+    # 1 February: 9,044.63 - 8,000 = 1,044.63, all of it paid ahead; 1 % of it is 10.45 on 1 March and on
+    # 1 April, and on 1 May what is left falls due with it: 1,044.63 + 10.45 = 1,055.08
     schedule = with_extra(FEB_1, amount=Decimal(8000), effect=ExtraEffect.PAY_AHEAD)
-    assert column(schedule, "payment") == ["11075.37", "0.00", "0.00", "1076.29"]
-    assert column(schedule, "principal")[1:3] == ["-10.45", "-10.55"]
+    assert column(schedule, "payment") == ["11075.37", "10.45", "10.45", "1055.08"]
+    assert column(schedule, "principal")[1:3] == ["0.00", "0.00"]
 
 
 def test_interest_first_under_the_united_states_rule() -> None:
@@ -281,3 +281,37 @@ def test_twice_a_month_is_half_a_month() -> None:
     schedule = built(frequency=Frequency.TWICE_A_MONTH, repayment=Repayment.INTEREST_ONLY, term=Length(3))
     assert column(schedule, "interest") == ["60.00", "60.00", "60.00"]
     assert column(schedule, "date") == ["2024-01-16", "2024-02-01", "2024-02-16"]
+
+
+def test_an_extra_brings_a_stated_balloon_forward() -> None:
+    """Shorten term with a balloon: the payment stays, and the balloon falls due once it is reached."""
+    # no interest: (10,000 - 4,000) / 10 = 600 a month. 1,500 extra with the first leaves 7,900, and six more
+    # leave 4,300; the next would leave 3,700, less than the balloon, so all 4,300 falls due: two months early
+    schedule = built(
+        principal=Decimal(10000),
+        annual_rate=Decimal(0),
+        term=Length(10),
+        balloon=Decimal(4000),
+        extra_payments=(ExtraPayment(date=FEB_1, amount=Decimal(1500)),),
+    )
+    assert column(schedule, "payment") == ["2100.00", *["600.00"] * 6, "4300.00"]
+    assert [problem.problem for problem in schedule.problems] == [
+        "extra payments bring the loan down to its balloon early: 4,000.00 falls due on 2024-09-01 instead of "
+        "2024-11-01"
+    ]
+
+
+def test_in_advance_the_last_payment_leaves_exactly_the_balloon() -> None:
+    # in advance: 600 from 1 January on; 1,500 extra on 1 February: 10,000 - 2 x 600 - 1,500 = 7,300, five
+    # more leave 4,300; on 1 August only 300 is due, and on 1 September the balloon, two months early
+    schedule = built(
+        principal=Decimal(10000),
+        annual_rate=Decimal(0),
+        term=Length(10),
+        balloon=Decimal(4000),
+        timing=Timing.ADVANCE,
+        extra_payments=(ExtraPayment(date=FEB_1, amount=Decimal(1500)),),
+    )
+    assert column(schedule, "payment") == ["600.00", "2100.00", *["600.00"] * 5, "300.00"]
+    assert column(schedule, "payment", RowKind.BALLOON) == ["4000.00"]
+    assert str(schedule.date[-1]) == "2024-09-01"

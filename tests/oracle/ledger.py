@@ -225,7 +225,7 @@ class Ledger:
             kind = "balloon"
         else:
             instalment, final, clears = self._instalment(i, interest, odd_item, owed)
-        used = 0 if clears else min(self.credit, max(0, instalment))
+        used = 0 if clears else min(self.credit, max(0, instalment - interest))
         self.credit -= used
         self.balloon_next = self.terms.advance and final and (used == 0 or self._is_last(i))
         paid = instalment - used
@@ -248,18 +248,23 @@ class Ledger:
         if self._is_last(i) and not self.terms.advance:
             self.left_at_end = max(0, owed - regular)
             return owed, True, True
-        at_balloon = self.terms.open_ended and not self.resized and self.balance <= self.terms.balloon
-        if at_balloon:  # only the balloon is left, or less: now, or in advance one period after the interest
+        early = self._may_end_early()
+        if early and self.balance <= self.terms.balloon:  # only the balloon is left, or less: now, or in advance one period after the interest
             return (interest if self.terms.advance else owed), True, False
         if self._is_interest_only(i):
             return interest, self._is_last(i), False
         regular = min(regular, owed)
         if self._is_last(i):
             return self._last_in_advance(regular, owed)
-        if self.terms.open_ended and not self.resized and owed - regular <= self.terms.balloon:
-            # the fewest payments: this is the one that reaches the balloon, or nothing
+        if early and owed - regular <= self.terms.balloon:
+            # the fewest payments: this is the one that reaches the stated balloon, or nothing
             return (owed - self.terms.balloon if self.terms.advance else owed), True, False
         return regular, False, False
+
+    def _may_end_early(self) -> bool:
+        """The payment decides the term, or extra payments shorten it: to the stated balloon, or to nothing."""
+        open_ended = self.terms.open_ended and not self.resized
+        return open_ended or (self.shortened and bool(self.terms.balloon))
 
     def _regular_instalment(self, interest: int, odd_item: int) -> int:
         """The instalment, the loan's end not yet looked at; the odd-day item comes on top of a level one."""
@@ -271,11 +276,13 @@ class Ledger:
         """The last payment in advance: it clears the loan, or leaves the balloon due one period later."""
         left = self.left_at_end = owed - regular
         given = self.terms.payment is not None and not self.resized
+        if self.shortened and self.terms.balloon:
+            return owed - self.terms.balloon, True, False
         if self.stretched or (given and (self.terms.balloon or left > regular)):
             return regular, True, False
         if not self.balloon:
             return owed, True, True
-        if self.shortened or given or owed < self.balloon:
+        if given or owed < self.balloon:
             return regular, True, False
         return owed - self.balloon, True, False
 
@@ -387,7 +394,7 @@ class Ledger:
         if extra.effect == "lower payment":
             self.pending = RE_AMORTIZE
         elif extra.effect == "pay ahead":
-            self.credit += interest + principal
+            self.credit += principal
 
     # ------------------------------------------------------------------ small things
 

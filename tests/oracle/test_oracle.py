@@ -324,12 +324,13 @@ def test_extra_inside_a_period_splits_it() -> None:
 
 
 def test_paying_ahead() -> None:
-    # 3,500 ahead takes all of the next instalment (3,075.37), 424.63 of the one after; its interest is added
+    # 12,000 - 2,955.37 - 3,500 = 5,544.63; 1 % of it, 55.45, goes on being paid. 3,500 ahead takes all the
+    # principal of the next instalment (3,019.92) and 480.08 of the one after: 3,075.37 - 480.08 = 2,595.29
     extra = {"Date": date(2024, 2, 1), "Amount": Dec(3500), "Effect": "pay ahead"}
     rows = schedule(TWELVE, extra_payments=[extra])
     assert column(rows, "extra_principal") == amounts("3500.00", "0.00", "0.00", "0.00")
-    assert column(rows, "payment")[:3] == amounts("6575.37", "0.00", "2650.74")
-    assert column(rows, "principal")[1] == Dec("-55.45")  # 1 % of 12,000 - 2,955.37 - 3,500 = 5,544.63
+    assert column(rows, "payment")[:3] == amounts("6575.37", "55.45", "2595.29")
+    assert column(rows, "principal")[1] == Dec("0.00")
 
 
 def test_extra_that_clears_the_loan() -> None:

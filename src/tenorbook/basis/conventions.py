@@ -342,7 +342,7 @@ class UnpaidInterest(Documented):
 class ExtraEffect(Documented):
     """What an extra payment changes in the payments after it."""
 
-    SHORTEN = "shorten term", Doc("Nothing: the payment stays, and the loan ends sooner.")
+    SHORTEN = "shorten term", Doc("Nothing: the payment stays, and the loan (to its balloon) ends sooner.")
     LOWER = (
         "lower payment",
         Doc("The payment is re-amortized over the remaining due dates.", also=("recast",)),
@@ -350,9 +350,8 @@ class ExtraEffect(Documented):
     PAY_AHEAD = (
         "pay ahead",
         Doc(
-            "Principal falls at once, and the next instalments are reduced until the amount is used up; "
-            "interest goes on accruing, and what an instalment then leaves unpaid follows the loan's rule "
-            "for unpaid interest."
+            "Principal falls at once, and the principal of the next instalments is reduced until the "
+            "amount is used up; interest goes on being paid."
         ),
     )
 

@@ -24,7 +24,8 @@ def accrued_interest(schedule: Schedule, until: date, after_events: bool = False
     """
     if until < schedule.date[0] or until > schedule.date[-1] - timedelta(after_events):
         return 0
-    steps = make_steps(schedule.terms, schedule.date[-1])
+    # Where a payment decides the term, the schedule's end is the contract's maturity.
+    steps = make_steps(schedule.terms, None if schedule.terms.count else schedule.date[-1])
     period = max(1, (bisect_right if after_events else bisect_left)(steps.boundaries, until))
     accrual = Accrual(steps, schedule.terms.interest_rounding)
     first = 1 if schedule.terms.one_payment else period

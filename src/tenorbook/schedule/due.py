@@ -67,7 +67,7 @@ def _split(state: State, interest: int) -> tuple[int, int]:
     owed = state.balance + interest
     due, used = _falls_due(state, interest, owed), 0
     if due < owed or not is_last(state):
-        used = min(state.ahead, max(0, due))
+        used = min(state.ahead, max(0, due - interest))
         state.ahead -= used
         state.balloon_next = state.balloon_next and (not used or is_last(state))
     principal = due - used - interest
@@ -111,9 +111,13 @@ def is_last(state: State) -> bool:
 
 
 def _reaches_end(state: State, left: int) -> bool:
-    """Whether a loan whose payment decides its term has come down to its balloon, or to nothing."""
+    """Whether a loan has come down to its stated balloon, or to nothing, before its term says so.
+
+    So it does where the payment decides the term, and where extra payments shorten it.
+    """
     open_ended = state.terms.count is None and not state.resized
-    return open_ended and left <= (state.terms.balloon or 0)
+    shortened = state.reduced and bool(state.terms.balloon)
+    return (open_ended or shortened) and left <= (state.terms.balloon or 0)
 
 
 def _last_in_advance(state: State, regular: int, owed: int) -> int:
@@ -126,12 +130,12 @@ def _last_in_advance(state: State, regular: int, owed: int) -> int:
     terms, left, balloon = state.terms, owed - regular, state.plan.balloon
     given = terms.payment is not None and not state.resized
     open_ended = terms.count is None and not state.resized
-    if open_ended:
+    if open_ended or (state.reduced and terms.balloon):
         return max(owed - balloon, owed - state.balance)
     if terms.amortized_over or (given and (terms.balloon or left > regular)):
         return regular
     if not balloon:
         return owed
-    if state.reduced or given or owed < balloon:
+    if given or owed < balloon:
         return regular
     return owed - balloon

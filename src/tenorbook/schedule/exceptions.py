@@ -2,21 +2,22 @@
 
 from collections.abc import Iterator
 
-from tenorbook.basis.conventions import ExtraEffect, Repayment, RowKind
+from tenorbook.basis.conventions import Repayment, RowKind
 from tenorbook.basis.money import to_words
 from tenorbook.basis.problem import Problem, note, warning
 from tenorbook.schedule.ledger import Schedule
 
 
 def exceptions_of(schedule: Schedule) -> Iterator[Problem]:
-    """Warnings and notes on interest not covered, the last payment, and a term the payment decides."""
+    """Warnings and notes: interest not covered, the last payment, an early balloon, a term decided."""
     yield from _uncovered_interest(schedule)
     yield from _last_payment(schedule)
+    yield from _early_balloon(schedule)
     yield from _decided_term(schedule)
 
 
 def _uncovered_interest(schedule: Schedule) -> Iterator[Problem]:
-    """Payments below the interest due with them: the note's own, or those reduced by paying ahead."""
+    """Payments below the interest due with them."""
     if min(schedule.principal) >= 0:
         return
     short = [
@@ -26,18 +27,30 @@ def _uncovered_interest(schedule: Schedule) -> Iterator[Problem]:
     ]
     if not short:
         return
-    terms, first = schedule.terms, schedule.date[short[0]]
-    ahead = any(extra.effect is ExtraEffect.PAY_AHEAD for extra in terms.extras)
-    remedy = "check the payment and the rate"
-    if ahead:
-        remedy = "expected while the loan is paid ahead, unless the note says that unpaid interest is carried"
+    terms = schedule.terms
     yield warning(
         terms.loan_id,
-        terms.loan.place("Unpaid interest" if ahead else "Payment"),
-        f"{_counted(len(short))} not cover the interest, the first on {first}; what is unpaid is added "
-        "to the balance",
-        remedy,
+        terms.loan.place("Payment"),
+        f"{_counted(len(short))} not cover the interest, the first on {schedule.date[short[0]]}; what is "
+        "unpaid is added to the balance",
+        "check the payment and the rate",
     )
+
+
+def _early_balloon(schedule: Schedule) -> Iterator[Problem]:
+    """A stated balloon that extra payments bring forward."""
+    terms, end = schedule.terms, schedule.date[-1]
+    if not terms.balloon or terms.count is None or schedule.principal[-1] < terms.balloon:
+        return
+    contract = terms.due[terms.count + (1 if terms.in_advance else 0)]
+    if end < contract:
+        yield warning(
+            terms.loan_id,
+            terms.loan.place("Balloon"),
+            f"extra payments bring the loan down to its balloon early: "
+            f"{to_words(terms.balloon, terms.digits)} falls due on {end} instead of {contract}",
+            "use the effect lower payment where the note fixes the date of the balloon",
+        )
 
 
 def _last_payment(schedule: Schedule) -> Iterator[Problem]:

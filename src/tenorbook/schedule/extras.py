@@ -20,7 +20,7 @@ def extras_between_due_dates(state: State, day: dt.date) -> None:
         interest, principal = interest + taken, principal + used
         _take_interest(state, taken, row)
         _note_cut(state, extra, taken + used)
-        _apply_effect(state, extra.effect, extra.date, taken + used)
+        _apply_effect(state, extra.effect, extra.date, used)
     if interest or principal:
         state.add_row(
             RowKind.EXTRA,
@@ -76,7 +76,7 @@ def extras_on_due_date(state: State, day: dt.date, balance: int) -> tuple[int, i
         used = min(extra.amount - taken, balance - total)
         interest, total = interest + taken, total + used
         _note_cut(state, extra, taken + used)
-        _apply_effect(state, extra.effect, extra.date, taken + used)
+        _apply_effect(state, extra.effect, extra.date, used)
     return interest, total
 
 
@@ -89,12 +89,12 @@ def _carried_taken(state: State, amount: int, interest_first: bool, balance: int
     return taken
 
 
-def _apply_effect(state: State, effect: ExtraEffect, day: dt.date, amount: int) -> None:
+def _apply_effect(state: State, effect: ExtraEffect, day: dt.date, principal: int) -> None:
     match effect:
         case ExtraEffect.LOWER:
             state.pending = f"re-amortized after the extra payment of {day}"
         case ExtraEffect.PAY_AHEAD:
-            state.ahead += amount
+            state.ahead += principal
         case ExtraEffect.SHORTEN:
             state.reduced = True
 

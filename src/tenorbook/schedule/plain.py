@@ -86,8 +86,9 @@ def _usable(state: State, run: Run) -> int:
 
 
 def _floor(state: State) -> int:
-    """The balance at which a run ends: nothing, or the balloon of a loan whose payment decides its term."""
-    return (state.terms.balloon or 0) if state.terms.count is None else 0
+    """The balance at which a run ends: nothing, or the balloon where the loan may come down to it early."""
+    early = state.terms.count is None or state.reduced
+    return (state.terms.balloon or 0) if early else 0
 
 
 def _last_plain(state: State) -> int:
