@@ -296,8 +296,8 @@ def test_an_extra_brings_a_stated_balloon_forward() -> None:
     )
     assert column(schedule, "payment") == ["2100.00", *["600.00"] * 6, "4300.00"]
     assert [problem.problem for problem in schedule.problems] == [
-        "extra payments bring the loan down to its balloon early: 4,000.00 falls due on 2024-09-01 instead of "
-        "2024-11-01"
+        "extra payments bring the loan down to its balloon early: 4,000.00 falls due on 2024-09-01 "
+        "instead of 2024-11-01"
     ]
 
 
