@@ -165,8 +165,8 @@ HARBOUR_EXTRAS: list[Row] = [
     {"Loan ID": "MP-06", "Date": day("2025-05-20"), "Amount": 4_500, "Effect": "pay ahead",
      "Note": "Three payments ahead"},
     {"Loan ID": "MP-13", "Date": day("2025-06-10"), "Amount": 30_000, "Effect": "lower payment"},
-    {"Loan ID": "MP-14", "Date": day("2025-04-01"), "Amount": 25_000, "Applies to": "interest first",
-     "Note": "By the note, interest first"},
+    {"Loan ID": "MP-14", "Date": day("2025-04-01"), "Amount": 25_000, "Effect": "lower payment",
+     "Applies to": "interest first", "Note": "By the note, interest first"},
     {"Loan ID": "MP-19", "Date": day("2025-10-05"), "Amount": 1_000, "Every": "quarterly", "Until": 4},
 ]  # fmt: skip
 
