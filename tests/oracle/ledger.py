@@ -249,7 +249,8 @@ class Ledger:
             self.left_at_end = max(0, owed - regular)
             return owed, True, True
         early = self._may_end_early()
-        if early and self.balance <= self.terms.balloon:  # only the balloon is left, or less: now, or in advance one period after the interest
+        # only the balloon is left, or less: now, or in advance one period after the interest
+        if early and self.balance <= self.terms.balloon:
             return (interest if self.terms.advance else owed), True, False
         if self._is_interest_only(i):
             return interest, self._is_last(i), False
@@ -262,7 +263,7 @@ class Ledger:
         return regular, False, False
 
     def _may_end_early(self) -> bool:
-        """The payment decides the term, or extra payments shorten it: to the stated balloon, or to nothing."""
+        """The payment decides the term, or extras shorten it: to the stated balloon, or to nothing."""
         open_ended = self.terms.open_ended and not self.resized
         return open_ended or (self.shortened and bool(self.terms.balloon))
 

@@ -12,6 +12,7 @@ import time
 from collections.abc import Callable
 from datetime import date, timedelta
 from decimal import Decimal
+from functools import partial
 
 import numpy as np
 import numpy_financial as npf
@@ -83,10 +84,12 @@ def main() -> None:
     base = ROWS / cpu(baseline)
     print(f"numpy-financial ipmt + ppmt        {base / 1e6:6.2f} M rows/s   1.00")
     speed = ROWS / cpu(kernel)
-    print(f"kernel alone                       {speed / 1e6:6.2f} M rows/s   {speed / base:.2f}  (at least 0.5)")
+    print(
+        f"kernel alone                       {speed / 1e6:6.2f} M rows/s   {speed / base:.2f}  (at least 0.5)"
+    )
     for day_count in (DayCount.THIRTY_360, DayCount.ACTUAL_360, DayCount.ACTUAL_ACTUAL_ISDA):
         loans = terms(day_count)
-        speed = ROWS / cpu(lambda loans=loans: build_all(loans))
+        speed = ROWS / cpu(partial(build_all, loans))
         print(
             f"terms to rows, {day_count.value:<20}{speed / 1e6:6.2f} M rows/s   {speed / base:.2f}  "
             "(at least 0.12)"
