@@ -7,7 +7,9 @@ from reports.samples import AS_OF, book_of, extra, note
 from tenorbook.basis.conventions import Repayment, Side
 from tenorbook.reports.exceptions import exceptions_sheet
 from tenorbook.reports.flat import streams
-from tenorbook.reports.maturities import maturities_sheet, run_offs
+from tenorbook.reports.maturities import maturities_sheet
+from tenorbook.reports.outlook import Outlook
+from tenorbook.reports.result import BookResult
 from tenorbook.reports.summary import summary_sheet
 from tenorbook.tables.sheet import Charts, Lines, Sheet
 from tenorbook.tables.stream import Stream
@@ -28,6 +30,10 @@ BAD = note("BAD", principal=Decimal(-5))
 
 def headers(stream: Stream) -> str:
     return ", ".join(field.header for field in stream.fields)
+
+
+def summary_of(book: BookResult, sheets: dict[str, str], live: bool) -> Sheet:
+    return summary_sheet(book, book.results, Outlook(AS_OF, book.results), sheets, live)
 
 
 def tables(sheet: Sheet) -> dict[str, Table]:
@@ -119,7 +125,7 @@ def test_a_loan_set_aside_is_in_the_summary_without_figures() -> None:
 
 def test_totals_are_by_currency() -> None:
     book = book_of([note("A"), note("B"), note("E", currency="EUR"), BAD])
-    totals = tables(summary_sheet(book, book.results, {}, live=False))["totals"]
+    totals = tables(summary_of(book, {}, live=False))["totals"]
     assert totals.column("currency").values == ["USD", "EUR"]
     assert totals.column("principal").values == [50_000_000, 25_000_000]
     assert totals.column("principal").exceptions[0] == (
@@ -129,16 +135,16 @@ def test_totals_are_by_currency() -> None:
 
 def test_what_we_owe_and_are_owed_is_never_added_up() -> None:
     book = book_of([note("A"), note("B", side=Side.RECEIVABLE), note("E", currency="EUR")])
-    found = tables(summary_sheet(book, book.results, {}, live=False))["totals"]
-    assert found.column("what").values == ["USD payable", "USD receivable", "EUR"]
+    found = tables(summary_of(book, {}, live=False))["totals"]
+    assert found.column("loan").values == ["USD payable", "USD receivable", "EUR"]
     assert found.column("principal").values == [25_000_000, 25_000_000, 25_000_000]
-    maturities = tables(maturities_sheet(book, book.results, "Summary"))
+    maturities = tables(maturities_sheet(book, Outlook(AS_OF, book.results), "Summary"))
     assert maturities["bands_USD_receivable"].column("loan").values == ["B"]
 
 
 def test_totals_stand_under_the_columns_they_add_up() -> None:
     book = book_of([note()])
-    found = tables(summary_sheet(book, book.results, {}, live=False))
+    found = tables(summary_of(book, {}, live=False))
     loans = [column.header for column in found["loans"].columns]
     for number, column in enumerate(found["totals"].columns):
         if column.header not in ("", "Totals"):
@@ -147,7 +153,7 @@ def test_totals_stand_under_the_columns_they_add_up() -> None:
 
 def test_the_summary_refers_to_the_sheets_of_the_loans() -> None:
     book = book_of([note(), BAD])
-    found = tables(summary_sheet(book, book.results, {"EQ-101": "EQ-101"}, live=True))["loans"]
+    found = tables(summary_of(book, {"EQ-101": "EQ-101"}, live=True))["loans"]
     assert found.column("loan").links == {0: "EQ-101"}
     assert found.column("total_interest").exceptions == {0: "'EQ-101'!total_interest"}
     assert found.sparkline is not None
@@ -157,13 +163,13 @@ def test_the_summary_refers_to_the_sheets_of_the_loans() -> None:
 def test_charts_of_up_to_three_currencies() -> None:
     codes = ("USD", "EUR", "JPY", "GBP")
     book = book_of([note(code, currency=code) for code in codes])
-    sheet = summary_sheet(book, book.results, {}, live=False)
+    sheet = summary_of(book, {}, live=False)
     charts = [chart for part in sheet.parts if isinstance(part, Charts) for chart in part.charts]
-    assert [chart.kind for chart in charts] == ["line", "stacked column"] * 3
+    assert [chart.kind for chart in charts] == ["area", "stacked column", "column"] * 3
 
 
 def test_run_off_ends_at_nothing_and_adds_up() -> None:
-    (run_off,) = run_offs(book_of([note()]), book_of([note()]).results)
+    (run_off,) = Outlook(AS_OF, book_of([note()]).results).run_offs
     assert run_off.months[0] == date(2025, 12, 1)
     schedule = book_of([note()]).results[0].schedule
     assert schedule is not None
@@ -174,7 +180,7 @@ def test_run_off_ends_at_nothing_and_adds_up() -> None:
 
 def test_maturities_add_up_to_the_balance() -> None:
     book = book_of([note("A"), note("B", currency="JPY")])
-    found = tables(maturities_sheet(book, book.results, "Summary"))
+    found = tables(maturities_sheet(book, Outlook(AS_OF, book.results), "Summary"))
     for code, each in (("USD", book.results[0]), ("JPY", book.results[1])):
         assert each.position is not None
         for kind in ("bands", "years"):

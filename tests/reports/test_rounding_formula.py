@@ -10,7 +10,7 @@ from hypothesis import strategies as st
 
 from tenorbook.basis.conventions import InterestRounding
 from tenorbook.basis.rounding import round_fraction
-from tenorbook.reports.rounding_formula import is_plain, ordinary, rounded
+from tenorbook.reports.rounding_formula import are_plain, ordinary, rounded
 
 MODES = (InterestRounding.HALF_UP, InterestRounding.HALF_EVEN, InterestRounding.DOWN, InterestRounding.UP)
 
@@ -109,4 +109,4 @@ def test_carried_interest_keeps_away_from_the_tie_a_double_cannot_see() -> None:
     ],
 )
 def test_which_figures_are_far_from_a_tie(scaled: float, mode: InterestRounding, plain: bool) -> None:
-    assert is_plain(scaled, mode) is plain
+    assert are_plain([scaled], mode) == [plain]

@@ -38,7 +38,8 @@ def test_it_opens_with_the_job_and_two_commands() -> None:
 
 @pytest.mark.parametrize("line", blocks("sh")[2].splitlines())
 def test_each_example_runs(line: str, tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> None:
-    (tmp_path / "samples").symlink_to(ROOT / "samples")
+    for folder in ("samples", "templates"):
+        (tmp_path / folder).symlink_to(ROOT / folder)
     monkeypatch.chdir(tmp_path)
     program, *arguments = shlex.split(line)
     assert program == "tenorbook"

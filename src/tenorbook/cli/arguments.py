@@ -1,5 +1,6 @@
 """What the options take."""
 
+import os
 from datetime import date
 from typing import TYPE_CHECKING, Any
 
@@ -29,3 +30,9 @@ class Day(_Type):
             return date(int(year), int(month), int(day))
         except ValueError:
             self.fail(f"{value!r} is not a date; write it as 2026-01-31", param, ctx)
+
+
+def processors() -> int:
+    """How many processors this process may use."""
+    allowed = getattr(os, "sched_getaffinity", None)
+    return len(allowed(0)) if allowed else os.cpu_count() or 1

@@ -13,7 +13,7 @@ import click
 from tenorbook import __version__
 from tenorbook.basis.problem import BookError
 from tenorbook.cli import clock
-from tenorbook.cli.arguments import Day
+from tenorbook.cli.arguments import Day, processors
 from tenorbook.cli.console import forgive_encodings, warn
 from tenorbook.cli.progress import Bar
 
@@ -96,6 +96,10 @@ def main() -> None:
 @click.option("--csv", is_flag=True, help="CSV files as well.")
 @click.option("--parquet", is_flag=True, help="Parquet files as well.")
 @click.option("--values", is_flag=True, help="Figures instead of live formulas.")
+@click.option(
+    "--look", type=click.Path(path_type=Path), metavar="FILE", help="Your copy of templates/look.toml."
+)
+@click.option("--paper", type=click.Choice(["A4", "Letter"], case_sensitive=False), help="Paper. [A4]")
 @_json
 def schedule(
     book: Path,
@@ -105,6 +109,8 @@ def schedule(
     csv: bool,
     parquet: bool,
     values: bool,
+    look: Path | None,
+    paper: str | None,
     with_json: bool,
 ) -> int:
     """Write a dated schedule for every loan of BOOK.
@@ -117,7 +123,17 @@ def schedule(
     from tenorbook.cli.ending import finish
     from tenorbook.jobs.schedule import Options, schedule_book
 
-    options = Options(out=out, as_of=as_of, loan_ids=loans, csv=csv, parquet=parquet, values_only=values)
+    options = Options(
+        out=out,
+        as_of=as_of,
+        loan_ids=loans,
+        csv=csv,
+        parquet=parquet,
+        values_only=values,
+        look=look,
+        paper=paper,
+        processes=processors(),
+    )
     with Bar() as bar:
         done = schedule_book(book, options, clock.now(), bar)
     return finish("schedule", done, with_json=with_json, everything=False)

@@ -1,31 +1,24 @@
 """The result files of a book: reports to tables, tables to files, whole or not at all."""
 
-from collections.abc import Callable, Sequence
-from datetime import datetime, time
+from collections.abc import Iterator
+from dataclasses import replace
+from datetime import datetime
 from functools import partial
 from pathlib import Path
 
 from tenorbook.basis.problem import NOWHERE, Problem, warning
-from tenorbook.reports.exceptions import NAME as EXCEPTIONS
-from tenorbook.reports.exceptions import exceptions_sheet
+from tenorbook.jobs.crew import write_volumes
+from tenorbook.jobs.volume import Progress, Style, Volume, write_summary
 from tenorbook.reports.flat import streams
-from tenorbook.reports.loan_sheet import loan_sheet
-from tenorbook.reports.maturities import NAME as MATURITIES
-from tenorbook.reports.maturities import maturities_sheet
-from tenorbook.reports.result import BookResult, LoanResult
+from tenorbook.reports.result import BookResult
 from tenorbook.reports.summary import NAME as SUMMARY
-from tenorbook.reports.summary import summary_sheet
-from tenorbook.tables.names import SheetNames
 from tenorbook.write.csv_file import write_csv
+from tenorbook.write.design import Design
 from tenorbook.write.parquet_file import parquet_available, write_parquet
 from tenorbook.write.whole import WholeFiles, Written
-from tenorbook.write.workbook import Workbook
 
 MOST_LOANS = 250
 """Loans in one workbook; a larger book comes in volumes."""
-
-Progress = Callable[[int], None]
-"""Told the number of loans written so far."""
 
 
 def write_schedules(
@@ -36,6 +29,8 @@ def write_schedules(
     values_only: bool = False,
     csv: bool = False,
     parquet: bool = False,
+    design: Design | None = None,
+    processes: int = 1,
     now: datetime,
     progress: Progress | None = None,
 ) -> Written:
@@ -48,15 +43,18 @@ def write_schedules(
         values_only: figures instead of formulas.
         csv: CSV files too.
         parquet: Parquet files too; a warning where that is not installed.
+        design: the look of the workbooks; `None`: the usual one.
+        processes: at most so many write volumes at once; the files are the same whatever it is.
         now: for dated names of files that had to be kept.
         progress: told the number of loans written so far.
 
     Returns:
         The files and what there is to say about them.
     """
+    style = Style(design=design or Design(), values_only=values_only)
     with WholeFiles(folder, now) as files:
         notes: list[Problem] = []
-        _add_workbooks(files, result, stem, values_only, progress or _silent)
+        _add_workbooks(files, result, stem, style, processes, progress or _silent)
         if csv:
             for stream in streams(result):
                 files.add(f"{stem}.{stream.name}.csv", partial(write_csv, stream=stream))
@@ -79,70 +77,35 @@ def _no_parquet() -> Problem:
 
 
 def _add_workbooks(
-    files: WholeFiles, result: BookResult, stem: str, values_only: bool, progress: Progress
+    files: WholeFiles, result: BookResult, stem: str, style: Style, processes: int, progress: Progress
 ) -> None:
     """One workbook, or volumes and a summary of the whole book."""
-    loans = list(result.results)
-    if len(loans) <= MOST_LOANS:
-        volume = _Volume(result, loans, f"{stem}.schedules.xlsx", values_only)
-        files.add(volume.file, lambda path: volume.write(path, result.problems, progress, 0))
+    if len(result.results) <= MOST_LOANS:
+        file = f"{stem}.schedules.xlsx"
+        volume = Volume(file=file, result=result, problems=result.problems, back="", style=style)
+        files.add(file, lambda path: volume.write(path, progress))
         return
-    links: dict[str, str] = {}
-    for number, start in enumerate(range(0, len(loans), MOST_LOANS), 1):
-        part = loans[start : start + MOST_LOANS]
-        volume = _Volume(result, part, f"{stem}.schedules-{number:02d}.xlsx", values_only)
-        _add_volume(files, volume, progress, start)
-        links |= {loan_id: f"{volume.file}#{sheet}" for loan_id, sheet in volume.sheets.items()}
-    files.add(f"{stem}.summary.xlsx", lambda path: _write_summary(path, result, links, values_only))
+    volumes = list(_volumes(result, stem, style))
+    links = {loan_id: f"{v.file}#{sheet}" for v in volumes for loan_id, sheet in v.sheets().items()}
+    index = [volume.entry() for volume in volumes]
+    places = [(volume, files.reserve(volume.file)) for volume in volumes]
+    summary = files.reserve(_summary_file(stem))
+    write_volumes(places, processes, lambda: write_summary(summary, result, links, index, style), progress)
 
 
-def _add_volume(files: WholeFiles, volume: "_Volume", progress: Progress, before: int) -> None:
-    own = {each.loan.loan_id for each in volume.loans}
-    problems = tuple(problem for problem in volume.result.problems if problem.loan_id in own)
-    files.add(volume.file, lambda path: volume.write(path, problems, progress, before))
+def _volumes(result: BookResult, stem: str, style: Style) -> Iterator[Volume]:
+    """The volumes of a large book, each with its own loans and what is to be said about them."""
+    for number, start in enumerate(range(0, len(result.results), MOST_LOANS), 1):
+        loans = result.results[start : start + MOST_LOANS]
+        own = {each.loan.loan_id for each in loans}
+        yield Volume(
+            file=f"{stem}.schedules-{number:02d}.xlsx",
+            result=replace(result, results=loans),
+            problems=tuple(problem for problem in result.problems if problem.loan_id in own),
+            back=f"{_summary_file(stem)}#{SUMMARY}",
+            style=style,
+        )
 
 
-class _Volume:
-    """One workbook of loans.
-
-    Args:
-        result: of the book.
-        loans: those of this workbook.
-        file: its name.
-        values_only: figures instead of formulas.
-    """
-
-    def __init__(self, result: BookResult, loans: Sequence[LoanResult], file: str, values_only: bool) -> None:
-        self.result, self.loans, self.file, self._values_only = result, loans, file, values_only
-        names = SheetNames()
-        self._front = [names.take(name) for name in (SUMMARY, EXCEPTIONS, MATURITIES)]
-        self._shown = [each for each in loans if each.schedule is not None]
-        taken = [names.take(each.loan.loan_id) for each in self._shown]
-        self.sheets = {each.loan.loan_id: name for each, name in zip(self._shown, taken, strict=True)}
-
-    def write(self, path: Path, problems: tuple[Problem, ...], progress: Progress, before: int) -> None:
-        """Writes the workbook, a sheet at a time."""
-        result = self.result
-        with _workbook(path, result, [*self._front, *self.sheets.values()], self._values_only) as book:
-            for number, each in enumerate(self._shown, 1):
-                name = self.sheets[each.loan.loan_id]
-                book.fill(loan_sheet(each, name, SUMMARY, result.book.name))
-                progress(before + number)
-            book.fill(summary_sheet(result, self.loans, self.sheets, live=True))
-            book.fill(exceptions_sheet(result, problems, SUMMARY))
-            book.fill(maturities_sheet(result, self.loans, SUMMARY))
-
-
-def _workbook(path: Path, result: BookResult, sheets: list[str], values_only: bool) -> Workbook:
-    """A workbook dated as of the book's date, so that the same input gives the same bytes."""
-    created = datetime.combine(result.as_of, time())
-    title = f"Loan schedules of {result.book.name}"
-    return Workbook(path, sheets, title=title, created=created, values_only=values_only)
-
-
-def _write_summary(path: Path, result: BookResult, links: dict[str, str], values_only: bool) -> None:
-    """The whole book without its loans' sheets."""
-    with _workbook(path, result, [SUMMARY, EXCEPTIONS, MATURITIES], values_only) as book:
-        book.fill(summary_sheet(result, result.results, links, live=False))
-        book.fill(exceptions_sheet(result, result.problems, SUMMARY))
-        book.fill(maturities_sheet(result, result.results, SUMMARY))
+def _summary_file(stem: str) -> str:
+    return f"{stem}.summary.xlsx"

@@ -12,6 +12,7 @@ from tenorbook.jobs.outputs import write_schedules
 from tenorbook.read import read_book
 from tenorbook.reports.result import BookResult
 from tenorbook.terms.book import Book
+from tenorbook.write.design import Design, read_design
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -25,6 +26,10 @@ class Options:
         csv: CSV files too.
         parquet: Parquet files too.
         values_only: figures instead of live formulas.
+        look: a file that describes the look of the workbooks; `None`: the usual one.
+        paper: `A4` or `Letter`; `None`: as the look says.
+        processes: at most so many write the volumes of a large book at once. More than one needs a main
+            module that can be imported again, as the command line's can.
     """
 
     out: Path | None = None
@@ -33,6 +38,9 @@ class Options:
     csv: bool = False
     parquet: bool = False
     values_only: bool = False
+    look: Path | None = None
+    paper: str | None = None
+    processes: int = 1
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -66,13 +74,20 @@ def schedule_book(path: Path, options: Options, now: datetime, progress: Progres
         progress: told what is being done.
 
     Raises:
-        BookError: the book, a Loan ID or the output folder cannot be used; nothing was written.
+        BookError: the book, a Loan ID, the look or the output folder cannot be used; nothing was written.
     """
+    design = _design(options)
     folder = output_folder(path, options.out)
     book = read_book(path)
     as_of, remark = settle_as_of(book, options.as_of, now)
     computed = compute(_with_remark(book, remark), as_of, options.loan_ids, progress)
-    return _written(path, folder, computed, options, now, progress)
+    return _written(path, folder, computed, options, design, now, progress)
+
+
+def _design(options: Options) -> Design:
+    """The look asked for."""
+    design = read_design(options.look) if options.look else Design()
+    return replace(design, paper=options.paper) if options.paper else design
 
 
 def settle_as_of(book: Book, asked: date | None, now: datetime) -> tuple[date, Problem | None]:
@@ -95,7 +110,13 @@ def _with_remark(book: Book, remark: Problem | None) -> Book:
 
 
 def _written(
-    path: Path, folder: Path, computed: Computed, options: Options, now: datetime, progress: Progress
+    path: Path,
+    folder: Path,
+    computed: Computed,
+    options: Options,
+    design: Design,
+    now: datetime,
+    progress: Progress,
 ) -> Done:
     """The results as files: the schedules, and the copy of the book with the marked cells."""
     result = computed.result
@@ -108,6 +129,8 @@ def _written(
             values_only=options.values_only,
             csv=options.csv,
             parquet=options.parquet,
+            design=design,
+            processes=options.processes,
             now=now,
             progress=lambda count: progress("writing", count, total),
         )

@@ -1,5 +1,8 @@
 """Every problem of the book, on one sheet."""
 
+from collections.abc import Mapping
+from itertools import islice
+
 from tenorbook.basis.problem import Problem, Severity
 from tenorbook.reports.result import BookResult
 from tenorbook.reports.words import CAUTION, MARK
@@ -11,18 +14,24 @@ NAME = "Exceptions"
 _MOST_SHOWN = 1_048_000
 """Rows a sheet holds, less what stands above them."""
 
+_MOST_LINKS = 60_000
+"""Links on one sheet; spreadsheet programs take 65,530."""
 
-def exceptions_sheet(result: BookResult, problems: tuple[Problem, ...], back: str) -> Sheet:
+
+def exceptions_sheet(
+    result: BookResult, problems: tuple[Problem, ...], back: str, sheets: Mapping[str, str] | None = None
+) -> Sheet:
     """The sheet of problems: severity, loan, place, what stood there, why it cannot be, what would do.
 
     Args:
         result: of the book.
         problems: those of the workbook's loans.
         back: name of the sheet the link at the top leads to.
+        sheets: loan ID -> its sheet; `file#sheet` where it stands in another workbook.
     """
     parts: list[Part] = []
     if problems:
-        parts.append(_table(problems[:_MOST_SHOWN]))
+        parts.append(_table(problems[:_MOST_SHOWN], sheets or {}))
     else:
         parts.append(Lines(("Nothing to report: every loan was read and computed as entered.",)))
     return Sheet(
@@ -43,24 +52,39 @@ def _counts(problems: tuple[Problem, ...]) -> str:
     return ", ".join(words)
 
 
-def _table(problems: tuple[Problem, ...]) -> Table:
-    def text(key: str, header: str, values: list[str], width: float, wrap: bool = False) -> Column:
-        return Column(key=key, header=header, role=Role.TEXT, values=values, width=width, wrap=wrap)
+def _table(problems: tuple[Problem, ...], sheets: Mapping[str, str]) -> Table:
+    def text(key: str, header: str, values: list[str], width: float) -> Column:
+        return Column(key=key, header=header, role=Role.TEXT, values=values, width=width, wrap=True)
 
     return Table(
         key="exceptions",
         columns=(
             text("severity", "Severity", [_severity(p) for p in problems], 12),
-            text("loan", "Loan", [p.loan_id for p in problems], 16),
+            Column(
+                key="loan",
+                header="Loan",
+                role=Role.TEXT,
+                values=[p.loan_id for p in problems],
+                width=16,
+                wrap=True,
+                links=_links(problems, sheets),
+            ),
             text("sheet", "Sheet", [p.sheet for p in problems], 15),
             text("cell", "Cell", [p.cell for p in problems], 8),
-            text("value", "Value", [p.value for p in problems], 18, wrap=True),
-            text("problem", "Problem", [p.problem for p in problems], 60, wrap=True),
-            text("remedy", "Remedy", [p.remedy for p in problems], 42, wrap=True),
+            text("value", "Value", [p.value for p in problems], 18),
+            text("problem", "Problem", [p.problem for p in problems], 60),
+            text("remedy", "Remedy", [p.remedy for p in problems], 42),
         ),
         tones={row: Tone.SPECIAL for row, p in enumerate(problems) if p.severity is Severity.ERROR},
         frozen=True,
+        filtered=True,
     )
+
+
+def _links(problems: tuple[Problem, ...], sheets: Mapping[str, str]) -> dict[int, str]:
+    """Row -> the sheet of its loan; a sheet takes no more than so many links."""
+    linked = ((row, sheets[p.loan_id]) for row, p in enumerate(problems) if p.loan_id in sheets)
+    return dict(islice(linked, _MOST_LINKS))
 
 
 def _severity(problem: Problem) -> str:

@@ -58,7 +58,7 @@ def figures(result: LoanResult, currency: str) -> Figures:
         principal=terms.principal,
         annual_rate=terms.rate,
         payment=regular_payment(schedule),
-        payments=sum(kind is RowKind.PAYMENT for kind in schedule.kind),
+        payments=schedule.kind.count(RowKind.PAYMENT),
         first_payment=_first_payment(schedule),
         last_payment=_last_payment(schedule),
         total_interest=sum(schedule.interest),
@@ -91,5 +91,5 @@ def _first_payment(schedule: Schedule) -> date | None:
 
 def _last_payment(schedule: Schedule) -> date | None:
     """The last date on which money is paid."""
-    rows = zip(schedule.date, schedule.payment, strict=True)
-    return max((day for day, paid in rows if paid), default=None)
+    rows = zip(reversed(schedule.date), reversed(schedule.payment), strict=True)
+    return next((day for day, paid in rows if paid), None)

@@ -4,12 +4,12 @@ from collections import Counter
 from collections.abc import Iterator, Sequence
 from fractions import Fraction
 from itertools import groupby
-from operator import attrgetter
+from operator import attrgetter, ne
 
 from tenorbook.basis.conventions import DayCount
 from tenorbook.basis.rounding import round_fraction
 from tenorbook.reports.fraction_formula import fraction_text
-from tenorbook.reports.rounding_formula import is_plain, ordinary, rounded
+from tenorbook.reports.rounding_formula import are_plain, ordinary, rounded
 from tenorbook.schedule.ledger import Item, Part, Schedule
 from tenorbook.schedule.steps import Span, make_steps
 
@@ -32,36 +32,41 @@ class InterestFormulas:
     def of_regular_rows(self) -> dict[int, str]:
         """The formulas of all rows whose interest is one stretch on the opening balance."""
         schedule, plain = self._schedule, self._are_plain()
+        years = [day.year for day in schedule.date]
+        crossing = [False, *map(ne, years, years[1:])]
+        keys = zip(schedule.numerators, schedule.denominators, schedule.days, crossing, strict=True)
         found: dict[int, str] = {}
-        fractions = zip(schedule.numerators, schedule.denominators, strict=True)
-        for row, (numerator, denominator) in enumerate(fractions):
-            if not numerator or row in schedule.irregular:
+        for row, key in enumerate(keys):
+            if not key[0] or row in schedule.irregular:
                 continue
-            if plain[row]:
-                found[row] = self._ordinary(row, numerator, denominator)
-            else:
+            if not plain[row]:
                 found[row] = self.of_items(row)[0]
+            else:
+                found[row] = self._regular.get(key) or self._ordinary(row, key)
         return found
 
     def _are_plain(self) -> list[bool]:
         """Whether the ordinary form of the rounding does, row by row."""
         schedule = self._schedule
-        rates = {rate: float(rate) for rate in set(schedule.annual_rate)}
-        columns = (schedule.opening, schedule.annual_rate, schedule.numerators, schedule.denominators)
-        return [
-            is_plain(opening * rates[rate] * numerator / denominator, self._rounding)
+        first = schedule.annual_rate[0]
+        if schedule.annual_rate.count(first) == len(schedule):
+            rates = [float(first)] * len(schedule)
+        else:
+            known = {rate: float(rate) for rate in set(schedule.annual_rate)}
+            rates = [known[rate] for rate in schedule.annual_rate]
+        columns = (schedule.opening, rates, schedule.numerators, schedule.denominators)
+        products = (
+            opening * rate * numerator / denominator
             for opening, rate, numerator, denominator in zip(*columns, strict=True)
-        ]
+        )
+        return are_plain(products, self._rounding)
 
-    def _ordinary(self, row: int, numerator: int, denominator: int) -> str:
+    def _ordinary(self, row: int, key: tuple[int, int, int, bool]) -> str:
+        """The ordinary form, kept for the rows that are alike."""
         schedule = self._schedule
-        days, end = schedule.days[row], schedule.date[row]
-        key = (numerator, denominator, days, row > 0 and schedule.date[row - 1].year != end.year)
-        if key not in self._regular:
-            fraction = Fraction(numerator, denominator)
-            text = fraction_text(fraction, schedule.date[row - 1], end, self._counts, "[days]")
-            product = f"[opening]*[rate]*{text}"
-            self._regular[key] = ordinary(product, self._digits, self._rounding)
+        fraction = Fraction(key[0], key[1])
+        text = fraction_text(fraction, schedule.date[row - 1], schedule.date[row], self._counts, "[days]")
+        self._regular[key] = ordinary(f"[opening]*[rate]*{text}", self._digits, self._rounding)
         return self._regular[key]
 
     def of_items(self, row: int, only: Item | None = None) -> tuple[str, int]:

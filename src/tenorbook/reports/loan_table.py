@@ -1,5 +1,6 @@
 """The dated table of a loan: one row an event, every figure a formula on the cells it comes from."""
 
+from collections import Counter
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 from datetime import date
@@ -18,10 +19,13 @@ from tenorbook.tables.table import Column, Role, Subtotal, Table, Tone
 TABLE = "schedule"
 """Key of the table."""
 
-_FIRST_SERIAL = date(1900, 3, 1)
+FIRST_SERIAL = date(1900, 3, 1)
 """Spreadsheets count days reliably from here; earlier dates are text, and days plain numbers."""
 
-_MONEY_WIDTH = 14.5
+_MONEY_WIDTH = 17.5
+
+_NAMED = {"date": "dates", "principal": "principals", "extra": "extras", "draw": "draws"}
+"""Columns that formulas beside the table speak of by name."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -84,23 +88,24 @@ class _Maker:
             total_label="Total",
             label_column="date",
             frozen=True,
+            names=_names([column.key for column in columns]),
         )
         return LoanTable(table, self.force, tuple(self.principal.unexplained))
 
     def _what_and_when(self, words: list[str]) -> list[Column]:
         schedule = self.schedule
-        live_days = schedule.date[0] >= _FIRST_SERIAL
+        live_days = schedule.date[0] >= FIRST_SERIAL
         names = self._rate_names()
         return [
-            Column(key="number", header="No.", role=Role.INTEGER, values=_numbers(schedule), width=5.5),
-            Column(key="date", header="Date", role=Role.DATE, values=schedule.date, width=12.5),
+            Column(key="number", header="No.", role=Role.INTEGER, values=_numbers(schedule), width=6.5),
+            Column(key="date", header="Date", role=Role.DATE, values=schedule.date, width=13.5),
             Column(key="event", header="Event", role=Role.TEXT, values=words, width=25),
             Column(
                 key="days",
                 header="Days",
                 role=Role.INTEGER,
                 values=schedule.days,
-                width=7,
+                width=8,
                 formula="[date]-[date<]" if live_days else None,
                 exceptions={0: None},
             ),
@@ -109,7 +114,7 @@ class _Maker:
                 header="Annual rate",
                 role=Role.RATE,
                 values=schedule.annual_rate,
-                width=9.5,
+                width=11,
                 formula=self.force.rates[0].name,
                 exceptions=names,
             ),
@@ -121,6 +126,9 @@ class _Maker:
         On the day of a change the payment still shows the rate of the days before it.
         """
         names: dict[int, str | None] = {}
+        rates = self.schedule.annual_rate
+        if len(self.force.rates) == 1 and rates.count(self.force.rates[0].rate) == len(rates):
+            return names
         reached = 0
         for row, (kind, rate) in enumerate(zip(self.schedule.kind, self.schedule.annual_rate, strict=True)):
             candidates = self.force.rates[reached::-1]
@@ -185,8 +193,8 @@ class _Maker:
             for row, parts in schedule.irregular.items()
             if any(part.item is Item.ODD_DAYS for part in parts)
         }
-        formulas = {}
-        for row in range(len(schedule)):
+        formulas: dict[int, str | None] = dict(self.principal.of_plain_rows(odd_rows))
+        for row in (row for row in range(len(schedule)) if row not in formulas):
             odd = self.interest.of_items(row, Item.ODD_DAYS) if row in odd_rows else ("", 0)
             formulas[row] = self.principal.principal(row, odd)
         return formulas
@@ -216,7 +224,9 @@ class _Maker:
             return self._column(key, header, values, formulas, {}, Role.AMOUNT, True)
         common = _commonest(formulas)
         rows = range(len(values))
-        exceptions = {row: formulas.get(row) for row in rows if formulas.get(row) != common}
+        exceptions = {
+            row: its for row, its in zip(rows, map(formulas.get, rows), strict=True) if its != common
+        }
         return self._column(key, header, values, common, exceptions, Role.AMOUNT, True)
 
     def _running(
@@ -250,13 +260,16 @@ class _Maker:
         )
 
 
+def _names(keys: Sequence[str]) -> dict[str, str]:
+    """The names of the columns that formulas beside the table speak of."""
+    return {name: f"[{key}:all]" for key, name in _NAMED.items() if key in keys}
+
+
 def _commonest(formulas: Mapping[int, str | None]) -> str | None:
     """The formula that most rows have; it becomes the template of the column."""
-    counts: dict[str, int] = {}
-    for formula in formulas.values():
-        if formula is not None:
-            counts[formula] = counts.get(formula, 0) + 1
-    return max(counts, key=lambda formula: counts[formula], default=None)
+    counts = Counter(formulas.values())
+    del counts[None]
+    return counts.most_common(1)[0][0] if counts else None
 
 
 def _money_width(values: Sequence[int], digits: int, shown: int) -> float:

@@ -4,6 +4,7 @@ For each row the rule that made the figure is found by trying the few rules ther
 against exact figures; the formula written is the one of the rule that holds.
 """
 
+from collections.abc import Collection
 from dataclasses import dataclass, field
 
 from tenorbook.basis.conventions import ExtraEffect, Repayment, RowKind
@@ -51,6 +52,28 @@ class PrincipalFormulas:
         self.unexplained: list[int] = []
         self._paying_ahead = any(e.effect is ExtraEffect.PAY_AHEAD for e in schedule.terms.extras)
 
+    def of_plain_rows(self, odd_rows: Collection[int]) -> dict[int, str]:
+        """The formulas of all payments that are the instalment in force, less the interest where it is level.
+
+        Args:
+            odd_rows: rows with odd-day interest, which are not plain.
+        """
+        found: dict[int, str] = {}
+        if self._paying_ahead or self._carried is not None:
+            return found
+        schedule, amounts = self._schedule, self._force.amounts
+        ends = [*(each.row for each in amounts[1:]), schedule.last_row]
+        for each, end in zip(amounts, ends, strict=False):
+            text = self._round(f"{each.name}-[interest]") if self._level else each.name
+            rows = range(max(each.row, self._last_only_interest + 1), min(end, schedule.last_row))
+            for row in rows:
+                part = schedule.interest[row] if self._level else 0
+                if schedule.principal[row] == each.amount - part and schedule.kind[row] is RowKind.PAYMENT:
+                    found[row] = text
+        for row in odd_rows:
+            found.pop(row, None)
+        return found
+
     def principal(self, row: int, odd: tuple[str, int]) -> str | None:
         """The formula for the principal of a row; `None` for none.
 
@@ -76,10 +99,10 @@ class PrincipalFormulas:
 
     def _scheduled(self, row: int, amount: int, used: int, odd: tuple[str, int]) -> str | None:
         """A scheduled payment that does not clear the balance on the last row."""
-        due, due_text, base = self._due(row, odd)
+        due, _, base = self._due(row, odd)
         interest = self._schedule.interest[row] if self._level else self._interest_owed(row)[0]
         if amount == due - used - interest and (base or used):
-            less = f"-MIN([ahead<],{due_text})" if used else ""
+            less = f"-MIN([ahead<],{self._principal_due(row, odd)[1]})" if used else ""
             after = "-[interest]" if self._level and base else ""
             return self._round(base + less + after) if less or after else base
         if amount == self._schedule.opening[row] and amount:
@@ -116,7 +139,14 @@ class PrincipalFormulas:
             return 0
         if schedule.principal[row] == schedule.opening[row]:
             return 0
-        return min(self._ahead, max(0, self._due(row, odd)[0]))
+        return min(self._ahead, max(0, self._principal_due(row, odd)[0]))
+
+    def _principal_due(self, row: int, odd: tuple[str, int]) -> tuple[int, str]:
+        """The principal in the payment due, of which what was paid ahead is taken: figure, formula."""
+        due, text, base = self._due(row, odd)
+        interest, interest_text = self._interest_owed(row)
+        owed = f"({interest_text})" if "+" in interest_text else interest_text
+        return due - interest, f"{text}-{owed}" if self._level else base
 
     def _note_ahead(self, row: int, used: int, odd: tuple[str, int]) -> None:
         """Keeps the running column of what is paid ahead."""
@@ -128,7 +158,7 @@ class PrincipalFormulas:
         self._ahead += added - used
         self.beside.ahead.append(self._ahead)
         text = "[ahead<]" if row else ""
-        text += f"-MIN([ahead<],{self._due(row, odd)[1]})" if used else ""
+        text += f"-MIN([ahead<],{self._principal_due(row, odd)[1]})" if used else ""
         text += f"+{added_text}" if added else ""
         self.beside.ahead_formulas[row] = self._round(text.removeprefix("+")) if text else None
 
@@ -137,19 +167,17 @@ class PrincipalFormulas:
         schedule = self._schedule
         extras = [extra for extra in schedule.terms.extras if extra.date == schedule.date[row]]
         ahead = sum(extra.amount for extra in extras if extra.effect is ExtraEffect.PAY_AHEAD)
-        if schedule.kind[row] is RowKind.EXTRA:
-            text = "[interest]+[extra]" if any(schedule.extra) else "[interest]"
-            added = min(ahead, schedule.payment[row])
-            return added, text if added == schedule.payment[row] else self._units(added)
         added = min(ahead, schedule.extra[row])
         return added, "[extra]" if added == schedule.extra[row] else self._units(added)
 
     def _otherwise(self, row: int, amount: int) -> str:
-        """What the stated balloon leaves; failing that, what was paid less its interest."""
+        """What the balloon leaves, stated or not; failing that, what was paid less its interest."""
         schedule = self._schedule
         balloon = schedule.terms.balloon or 0
         if amount == schedule.opening[row] - balloon:
             return self._round("[opening]-balloon") if balloon else "[opening]"
+        if row < schedule.last_row and schedule.kind[row + 1] is RowKind.BALLOON:
+            return self._round(f"[opening]-{self._units(schedule.closing[row])}")
         self.unexplained.append(row)
         return self._round(f"{self._units(amount + schedule.interest[row])}-[interest]")
 

@@ -5,6 +5,7 @@ towards ties. Far from a tie both agree. Near one, the same formula is written i
 first rounds the noise away. Which form is needed is decided here, from the exact number.
 """
 
+from collections.abc import Iterable
 from fractions import Fraction
 
 from tenorbook.basis.conventions import InterestRounding
@@ -36,25 +37,22 @@ def rounded(text: str, exact: Fraction, digits: int, rounding: InterestRounding)
     return f"{function}(ROUND({text},{digits + beyond}),{digits})"
 
 
-def is_plain(scaled: float, rounding: InterestRounding) -> bool:
-    """Whether a figure is so far from a tie that the ordinary form of the formula is right.
+def are_plain(scaled: Iterable[float], rounding: InterestRounding) -> list[bool]:
+    """Whether figures are so far from a tie that the ordinary form of the formula is right.
 
     A quick test for long columns; `rounded` settles the few that fail it.
 
     Args:
-        scaled: the unrounded figure in units of the last digit, as a double.
-        rounding: how it is rounded.
+        scaled: the unrounded figures in units of the last digit, as doubles.
+        rounding: how they are rounded.
     """
-    rest = scaled % 1.0
-    margin = 2e-6 + abs(scaled) * 1e-14
-    to_tie = abs(rest - 0.5)
     if rounding in (InterestRounding.DOWN, InterestRounding.UP):
-        return margin < rest < 1 - margin
-    return to_tie > margin
+        return [abs(x % 1.0 - 0.5) < 0.5 - 2e-6 - abs(x) * 1e-14 for x in scaled]
+    return [abs(x % 1.0 - 0.5) > 2e-6 + abs(x) * 1e-14 for x in scaled]
 
 
 def ordinary(text: str, digits: int, rounding: InterestRounding) -> str:
-    """The ordinary form of the formula, right wherever `is_plain`."""
+    """The ordinary form of the formula, right wherever `are_plain`."""
     return rounded(text, Fraction(1, 4), digits, rounding)
 
 

@@ -58,14 +58,24 @@ def event_words(schedule: Schedule, reduced: Collection[int] = ()) -> list[Event
         reduced: rows whose payment is less because of what was paid ahead.
     """
     changes = iter(schedule.terms.repricings)
+    plain, telling = Event("Payment", False), _telling_rows(schedule, reduced)
     events = []
     for row, kind in enumerate(schedule.kind):
-        if kind is RowKind.RATE:
+        if kind is RowKind.PAYMENT and row not in telling:
+            events.append(plain)
+        elif kind is RowKind.RATE:
             change = next(changes, None)
             events.append(Event(MARK + f"Rate change{_to_rate(change.rate) if change else ''}", True))
         else:
             events.append(_event(schedule, row, kind, row in reduced))
     return events
+
+
+def _telling_rows(schedule: Schedule, reduced: Collection[int]) -> set[int]:
+    """Rows of which more is to be said than that they are payments; few of most loans."""
+    columns = zip(schedule.extra, schedule.principal, strict=True)
+    telling = {row for row, (extra, principal) in enumerate(columns) if extra or principal < 0}
+    return telling | {schedule.last_row, *reduced}
 
 
 def _to_rate(rate: Decimal) -> str:

@@ -62,6 +62,44 @@ class Blocks:
     blocks: tuple[Block, ...]
 
 
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Check:
+    """A difference that must be nothing, worked out by the spreadsheet itself.
+
+    Attributes:
+        label: what is held against what, in words.
+        formula: of the difference (see `tables.formula`); `None`: a plain value.
+        value: what the difference comes to, in units of 10^-digits.
+        digits: of the difference.
+        shown_digits: how many of them the format shows.
+    """
+
+    label: str
+    formula: str | None
+    value: int = 0
+    digits: int = 0
+    shown_digits: int = 0
+
+
+@dataclass(frozen=True, slots=True)
+class Checks:
+    """Checks below each other, each with its difference and PASS or FAIL, and what they all come to.
+
+    Attributes:
+        title: heading.
+        checks: at least one.
+        name: of the cell that says whether all of them pass.
+        label_column: sheet column (from 0) of the labels, which run on into the next columns.
+        value_column: sheet column of the differences; the verdicts stand in the next one.
+    """
+
+    title: str
+    checks: tuple[Check, ...]
+    name: str
+    label_column: int = 0
+    value_column: int = 5
+
+
 @dataclass(frozen=True, slots=True)
 class Lines:
     """Sentences below each other, each running across the sheet.
@@ -101,14 +139,18 @@ class Chart:
     """A native chart.
 
     Attributes:
-        kind: `line` or `stacked column`.
-        title: in words, with the currency.
+        kind: `area` (along dates), `column` or `stacked column`.
+        title: in words.
+        unit: of the axis, in words: `USD thousand`.
+        thousands: how many times the axis divides by a thousand.
         categories: the column along the bottom.
         series: what is drawn.
     """
 
     kind: str
     title: str
+    unit: str
+    thousands: int
     categories: Series
     series: tuple[Series, ...]
 
@@ -120,7 +162,23 @@ class Charts:
     charts: tuple[Chart, ...]
 
 
-Part = Blocks | Lines | Charts | Table
+Part = Blocks | Checks | Lines | Charts | Table
+
+
+@dataclass(frozen=True, slots=True)
+class Printed:
+    """What of a sheet is printed.
+
+    Attributes:
+        columns: how many, from the left; `None`: all.
+        parts: how many, from the top; `None`: all.
+        on_one_page: how many parts, from the top, are printed on one page if that leaves them legible;
+            then only what else there is room for on it is printed. 0: as many pages as it takes.
+    """
+
+    columns: int | None = None
+    parts: int | None = None
+    on_one_page: int = 0
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -131,10 +189,12 @@ class Sheet:
         name: fits the rules for sheet names and is unique in its workbook (see `tables.names`).
         title: first line.
         subtitle: second line.
-        back: name of the sheet that the link at the top leads to; empty: none.
+        back: name of the sheet (or `file#sheet`) that the link at the top leads to; empty: none.
         parts: below the title, one under the other.
         print_header: at the top right of every printed page.
         print_footer: at the bottom left of every printed page.
+        printed: what of it is printed.
+        logo: whether the logo stands at its top right, if there is one.
     """
 
     name: str
@@ -144,3 +204,5 @@ class Sheet:
     back: str = ""
     print_header: str = ""
     print_footer: str = ""
+    printed: Printed = Printed()
+    logo: bool = False

@@ -52,7 +52,8 @@ class Column:
         row_digits: of amounts in several currencies: digits of each row, in place of `digits`.
         row_shown_digits: and how many of them each row shows.
         formula: the template of the column (see `tables.formula`); `None`: plain values.
-        exceptions: row -> another formula for that row, or `None` for a plain value.
+        exceptions: row -> another formula for that row, or `None` for a plain value; in a column of text
+            these are the only formulas.
         totalled: whether subtotals and totals add it up.
         last_in_subtotal: whether a subtotal repeats the last value of its rows.
         links: row -> sheet (of the same workbook, or `file#sheet`) that the cell links to.
@@ -109,6 +110,9 @@ class Table:
         total_label: label of the total row; empty: no total row.
         label_column: key of the column that carries the labels of subtotals and total.
         frozen: whether the header stays in sight while the rows scroll, and is repeated in print.
+        filtered: whether the header has buttons that filter the rows.
+        names: name -> the cell or column of the table that it stands for on its sheet, as a formula's
+            reference: `[total:total]`, `[date:all]`.
         sparkline: a small line in each row.
     """
 
@@ -120,6 +124,8 @@ class Table:
     total_label: str = ""
     label_column: str = ""
     frozen: bool = False
+    filtered: bool = False
+    names: Mapping[str, str] = field(default_factory=dict)
     sparkline: "Sparklines | None" = None
 
     def __len__(self) -> int:

@@ -14,6 +14,10 @@ LONGEST_TEXT = 32_767
 FIRST_SERIAL_DATE = date(1900, 3, 1)
 """Before this day spreadsheet programs disagree about the serial number of a date."""
 
+DAY_ZERO = 693_594
+"""Ordinal of the day before serial number 1, as if 1900 had been a leap year."""
+
+_SPECIAL = re.compile(r"[&<>\x00-\x08\x0b-\x1f\ud800-\udfff\ufffe\uffff]|_x")
 _ESCAPE_LIKE = re.compile(r"_(?=x[0-9a-fA-F]{4}_)")
 _CONTROL = re.compile(r"[\x00-\x08\x0b-\x1f\ufffe\uffff]")
 _SURROGATE = re.compile(r"[\ud800-\udfff]")
@@ -37,6 +41,8 @@ def quoted(sheet: str) -> str:
 
 def escaped(text: str) -> str:
     """Text fit for XML; what XML cannot hold is spelled as spreadsheet programs spell it, `_x0007_`."""
+    if not _SPECIAL.search(text):
+        return text
     text = _ESCAPE_LIKE.sub("_x005F_", text)
     text = _CONTROL.sub(lambda match: f"_x{ord(match[0]):04X}_", text)
     text = _SURROGATE.sub("\ufffd", text)
@@ -81,4 +87,4 @@ def blank_cell(address: str, style: int) -> str:
 
 def serial(day: date) -> int:
     """The serial number of a date in the 1900 system; right from 1 March 1900."""
-    return day.toordinal() - 693_594
+    return day.toordinal() - DAY_ZERO

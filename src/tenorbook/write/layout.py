@@ -3,27 +3,30 @@
 Rows and addresses count from 1, as spreadsheet programs do; columns count from 0.
 """
 
+import re
 import textwrap
 from collections.abc import Iterator
 from dataclasses import dataclass
 from functools import cached_property
 
 from tenorbook.tables.formula import Reference, template
-from tenorbook.tables.sheet import Block, Blocks, Charts, Lines, Part, Sheet
+from tenorbook.tables.sheet import Block, Blocks, Charts, Checks, Lines, Part, Sheet
 from tenorbook.tables.table import Table
 from tenorbook.write.cells import letters, quoted
 
-CHART_ROWS = 17
+CHART_ROWS = 11
 """Sheet rows that a row of charts takes."""
 
 TEXT = 1.1
 """Characters of running text to a unit of column width: letters are narrower than digits."""
 
-SMALL_TEXT = 1.3
+SMALL_TEXT = 1.45
 """The same for text set smaller."""
 
 DEFAULT_WIDTH = 9.0
 """Width of a column that no table sets."""
+
+_ADDRESS = re.compile(r"\$?([A-Z]+)\$?(\d+)")
 
 
 @dataclass(frozen=True)
@@ -81,7 +84,7 @@ class SheetPlace:
         sheet: the sheet.
         parts: each part with the row it begins in; sentences already broken into lines.
         tables: by key.
-        names: the cell of each named entry.
+        names: the cells of each name, as an address that does not move.
         widths: of the columns.
         height: the last row.
     """
@@ -115,20 +118,21 @@ class SheetPlace:
 def arrange(sheet: Sheet) -> SheetPlace:
     """The places of everything on a sheet.
 
-    Title in row 1, subtitle in row 2, row 3 for the link back; then the parts, an empty row between them.
+    Title in row 1, subtitle in row 2, the link back in row 3; then the parts, an empty row between them.
     """
     widths = _widths(sheet)
     parts: list[tuple[int, Part]] = []
     tables: dict[str, TablePlace] = {}
-    row = 4
+    row = 5 if sheet.back else 4
     for part in sheet.parts:
         fitted = _broken(part, sum(widths)) if isinstance(part, Lines) else part
         parts.append((row, fitted))
         if isinstance(fitted, Table):
             tables[fitted.key] = place_table(fitted, row)
-        row += _height(fitted)
-    names = dict(_named_cells(parts))
-    return SheetPlace(sheet, parts, tables, names, widths, max(row - 2, 3))
+        row += height_of(fitted)
+    place = SheetPlace(sheet, parts, tables, {}, widths, max(row - 2, 3))
+    place.names.update(_named_cells(place))
+    return place
 
 
 def place_table(table: Table, row: int) -> TablePlace:
@@ -149,11 +153,13 @@ def place_table(table: Table, row: int) -> TablePlace:
     return TablePlace(table, row if table.title else 0, header, rows, subtotals, total, last)
 
 
-def _height(part: Part) -> int:
+def height_of(part: Part) -> int:
     """Rows that a part takes, and one empty row below it."""
     match part:
         case Blocks(blocks):
             return 1 + max(len(block.entries) + bool(block.title) for block in blocks)
+        case Checks(checks=checks):
+            return len(checks) + 3
         case Lines():
             return len(part.texts) + bool(part.title) + 1
         case Charts():
@@ -179,15 +185,32 @@ def _widths(sheet: Sheet) -> list[float]:
     return widths or [DEFAULT_WIDTH] * 12
 
 
-def _named_cells(parts: list[tuple[int, Part]]) -> Iterator[tuple[str, str]]:
-    for row, part in parts:
-        if isinstance(part, Blocks):
-            for block in part.blocks:
-                yield from _named_entries(block, row)
+def _named_cells(place: SheetPlace) -> Iterator[tuple[str, str]]:
+    """Every name of the sheet and its cells."""
+    for row, part in place.parts:
+        match part:
+            case Blocks(blocks):
+                for block in blocks:
+                    yield from _named_entries(block, row)
+            case Checks():
+                yield part.name, _fixed(verdict_cell(part, row))
+            case Table():
+                for name, reference in part.names.items():
+                    yield name, _fixed(place.resolve(reference, part.key))
 
 
 def _named_entries(block: Block, row: int) -> Iterator[tuple[str, str]]:
     first = row + bool(block.title)
     for number, entry in enumerate(block.entries):
         if entry.name:
-            yield entry.name, f"${letters(block.value_column)}${first + number}"
+            yield entry.name, _fixed(f"{letters(block.value_column)}{first + number}")
+
+
+def verdict_cell(checks: Checks, row: int) -> str:
+    """The cell that says what checks beginning in a row all come to."""
+    return f"{letters(checks.value_column + 1)}{row + len(checks.checks) + 1}"
+
+
+def _fixed(address: str) -> str:
+    """An address that does not move: `$A$1`."""
+    return _ADDRESS.sub(r"$\1$\2", address)

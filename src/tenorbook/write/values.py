@@ -6,20 +6,27 @@ from decimal import Decimal
 from typing import Any
 
 from tenorbook.tables.table import Column, Role
-from tenorbook.write.cells import FIRST_SERIAL_DATE, serial
+from tenorbook.write.cells import DAY_ZERO, FIRST_SERIAL_DATE, serial
 
 
 def amount_text(units: int, digits: int) -> str:
-    """An amount in units of 10^-digits as the shortest text of the double nearest to it."""
-    return repr(units / 10**digits) if digits else str(units)
+    """An amount in units of 10^-digits as the decimal number it is."""
+    return amount_texts((units,), digits)[0] or ""
 
 
 def amount_texts(units: Sequence[int | None], digits: int) -> list[str | None]:
-    """A column of amounts; see `amount_text`."""
+    """A column of amounts; see `amount_text`. The point is put into the text of each whole number, in half
+    the time that a double's shortest text takes."""
+    if None in units:
+        return [None if each is None else amount_text(each, digits) for each in units]
+    texts = map(str, units)
     if not digits:
-        return [None if value is None else str(value) for value in units]
-    scale = 10**digits
-    return [None if value is None else repr(value / scale) for value in units]
+        return list(texts)
+    whole, scale = digits + 1, 10**digits
+    return [
+        text[:-digits] + "." + text[-digits:] if len(text) > whole else repr(int(text) / scale)
+        for text in texts
+    ]
 
 
 def column_texts(column: Column) -> list[str | None]:
@@ -29,12 +36,22 @@ def column_texts(column: Column) -> list[str | None]:
         return [None if value is None else amount_text(value, digits) for value, digits in pairs]
     if column.is_amount:
         return amount_texts(column.values, column.digits)
+    values = column.values
     if column.role is Role.RATE:
-        texts = {rate: number_text(rate) for rate in set(column.values)}
-        return [texts[rate] for rate in column.values]
-    if column.role is Role.DATE and min(filter(None, column.values), default=date.max) >= FIRST_SERIAL_DATE:
-        return [None if value is None else str(serial(value)) for value in column.values]
-    return [number_text(value) for value in column.values]
+        return _rate_texts(values)
+    if column.role is Role.INTEGER:
+        return [None if value is None else str(value) for value in values]
+    if column.role is Role.DATE and min(filter(None, values), default=date.max) >= FIRST_SERIAL_DATE:
+        return [None if value is None else str(value.toordinal() - DAY_ZERO) for value in values]
+    return [number_text(value) for value in values]
+
+
+def _rate_texts(rates: Sequence[Decimal | None]) -> list[str | None]:
+    """A column of rates; most loans have one, and few have many."""
+    if rates and rates.count(rates[0]) == len(rates):
+        return [number_text(rates[0])] * len(rates)
+    texts = {rate: number_text(rate) for rate in set(rates)}
+    return [texts[rate] for rate in rates]
 
 
 def number_text(value: Any) -> str | None:

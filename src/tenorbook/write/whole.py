@@ -66,9 +66,13 @@ class WholeFiles:
             name: the file's name in the folder.
             write: writes the content to the path it is given.
         """
+        write(self.reserve(name))
+
+    def reserve(self, name: str) -> Path:
+        """The temporary name of a file, for someone else to write before the commit."""
         temporary = self._folder / f".{name}.{os.getpid()}.part"
         self._pending[name] = temporary
-        write(temporary)
+        return temporary
 
     def commit(self) -> Written:
         """Lets every file take its place; a file that someone edited or has open is stepped around."""

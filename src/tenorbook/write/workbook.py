@@ -1,24 +1,26 @@
 """Sheets to a workbook file: rows by our own writer, everything around them by XlsxWriter.
 
-Sheets are announced in the order of their tabs and filled in any order, one at a time; each goes to
-disk as it is filled, so that memory holds one sheet.
+Sheets are announced in the order of their tabs and filled in any order, one at a time; each is kept
+compressed once it is filled, so that memory holds one sheet in full and little of the others.
 """
 
 from collections.abc import Iterable
 from datetime import datetime
 from pathlib import Path
-from tempfile import TemporaryDirectory
 from types import TracebackType
 from typing import Any, Self
 
-from tenorbook.tables.sheet import Charts, Sheet
+from tenorbook.tables.sheet import Charts, Checks, Sheet
 from tenorbook.tables.table import Sparklines, Table
 from tenorbook.write.cells import quoted
-from tenorbook.write.charts import insert_chart
+from tenorbook.write.charts import ChartMaker
+from tenorbook.write.design import Design
+from tenorbook.write.heights import Heights
 from tenorbook.write.layout import SheetPlace, arrange
-from tenorbook.write.look import ACCENT, Look
-from tenorbook.write.page import set_up_page, set_up_view
-from tenorbook.write.sheet_rows import sheet_rows
+from tenorbook.write.logo import insert_logo
+from tenorbook.write.look import Look
+from tenorbook.write.page import pixels, set_up_page, set_up_view
+from tenorbook.write.sheet_rows import FAIL, sheet_rows
 
 
 class Workbook:
@@ -30,6 +32,7 @@ class Workbook:
         title: in the document's properties.
         created: the time of creation in the document's properties; the caller fixes it, so that the
             same input gives the same bytes.
+        design: the chosen look.
         values_only: whether formulas are left out.
     """
 
@@ -40,12 +43,12 @@ class Workbook:
         *,
         title: str,
         created: datetime,
+        design: Design,
         values_only: bool = False,
     ) -> None:
-        self._folder = TemporaryDirectory(prefix="tenorbook-")
-        self._writer = _xlsxwriter(path, self._folder.name)
+        self._writer = _xlsxwriter(path)
         self._writer.set_properties({"title": title, "created": created, "author": "tenorbook"})
-        self._look = Look(self._writer)
+        self._look = Look(self._writer, design)
         self._values_only = values_only
         self._ranges: dict[tuple[str, str, str], str] = {}
         self._later: list[tuple[Any, SheetPlace]] = []
@@ -54,41 +57,63 @@ class Workbook:
     def _announce(self, name: str) -> Any:
         from tenorbook.write.row_sheet import RowSheet
 
-        sheet = self._writer.add_worksheet(name, RowSheet)
-        sheet.pause()
-        return sheet
+        return self._writer.add_worksheet(name, RowSheet)
 
     def fill(self, sheet: Sheet) -> None:
         """Writes one announced sheet; it is not needed afterwards."""
-        target, place = self._sheets[sheet.name], arrange(sheet)
-        rows = sheet_rows(place, self._look, self._values_only)
+        target, place, design = self._sheets[sheet.name], arrange(sheet), self._look.design
+        heights = Heights(place, design)
+        rows = sheet_rows(place, self._look, heights, self._values_only)
         target.put_rows(rows, place.height, len(place.widths))
-        set_up_view(target, place)
-        set_up_page(target, place)
+        set_up_view(target, place, heights, design)
+        set_up_page(target, place, heights, design)
         _link(target, place)
-        for name, cell in place.names.items():
-            self._writer.define_name(f"{quoted(sheet.name)}!{name}", f"={quoted(sheet.name)}!{cell}")
+        self._name(sheet.name, place)
+        self._mark_failures(target, place)
+        if sheet.logo and design.logo:
+            insert_logo(target, place, heights, design)
         self._ranges.update(place.ranges())
         if _draws_on_others(sheet):
             self._later.append((target, place))
 
+    def _name(self, sheet: str, place: SheetPlace) -> None:
+        """Defines the names of a sheet."""
+        for name, cells in place.names.items():
+            self._writer.define_name(f"{quoted(sheet)}!{name}", f"={quoted(sheet)}!{cells}")
+
+    def _mark_failures(self, target: Any, place: SheetPlace) -> None:
+        """Lets a FAIL stand out, whenever a recalculation brings one."""
+        rule = {"type": "cell", "criteria": "==", "value": f'"{FAIL}"', "format": self._look.alarm}
+        for row, part in place.parts:
+            if isinstance(part, Checks):
+                column = part.value_column + 1
+                target.conditional_format(row, column, row + len(part.checks), column, rule)
+
     def _finish(self) -> None:
         """Adds what draws on several sheets, and writes the file."""
+        maker = ChartMaker(self._writer, self._look.design, self._ranges)
         for target, place in self._later:
             for row, part in place.parts:
                 if isinstance(part, Charts):
-                    for number, chart in enumerate(part.charts):
-                        insert_chart(self._writer, target, self._ranges, chart, (row - 1, number))
+                    width = pixels(place, self._look.design)
+                    maker.insert(target, part, row, width, Heights(place, self._look.design))
                 elif isinstance(part, Table) and part.sparkline:
                     self._insert_sparklines(target, place, part.key, part.sparkline)
         self._writer.close()
 
     def _insert_sparklines(self, target: Any, place: SheetPlace, table: str, lines: Sparklines) -> None:
+        """All lines of a table as one group; each has a scale of its own."""
         where = place.tables[table]
-        for row, followed in lines.targets.items():
-            cell = f"{where.letters[lines.column]}{where.rows[row]}"
-            options = {"range": self._ranges[followed], "series_color": ACCENT, "weight": 1.25, "min": 0}
-            target.add_sparkline(cell, options)
+        cells = [f"{where.letters[lines.column]}{where.rows[row]}" for row in lines.targets]
+        ranges = [self._ranges[followed] for followed in lines.targets.values()]
+        options = {
+            "location": cells,
+            "range": ranges,
+            "series_color": self._look.design.accent,
+            "weight": 1.25,
+            "min": 0,
+        }
+        target.add_sparkline(cells[0], options)
 
     def __enter__(self) -> Self:
         return self
@@ -96,33 +121,27 @@ class Workbook:
     def __exit__(
         self, kind: type[BaseException] | None, value: BaseException | None, trace: TracebackType | None
     ) -> None:
-        try:
-            if kind is None:
-                self._finish()
-        finally:
-            for sheet in self._sheets.values():
-                sheet.pause()
-            self._folder.cleanup()
+        if kind is None:
+            self._finish()
 
 
-def _xlsxwriter(path: Path, temporary: str) -> Any:
+def _xlsxwriter(path: Path) -> Any:
     """XlsxWriter's workbook, told never to take text for anything but text."""
-    from xlsxwriter import Workbook as Writer
+    from tenorbook.write.package import QuickWriter
 
     options = {
-        "constant_memory": True,
-        "tmpdir": temporary,
+        "in_memory": True,
         "strings_to_formulas": False,
         "strings_to_urls": False,
         "strings_to_numbers": False,
     }
-    return Writer(str(path), options)
+    return QuickWriter(str(path), options)
 
 
 def _link(target: Any, place: SheetPlace) -> None:
     """Makes the cells that lead to other sheets links."""
     if place.sheet.back:
-        target.put_link(2, 0, f"internal:{quoted(place.sheet.back)}!A1")
+        target.put_link(2, 0, _target(place.sheet.back))
     for table in place.tables.values():
         for number, column in enumerate(table.table.columns):
             for row, sheet in column.links.items():
