@@ -9,7 +9,7 @@ from tempfile import TemporaryDirectory
 
 import openpyxl
 from click.testing import CliRunner
-from hypothesis import given
+from hypothesis import Phase, given, settings
 from hypothesis import strategies as st
 
 import oracle
@@ -94,7 +94,7 @@ def compared(row: dict[str, object]) -> dict[str, object]:
 
 
 @given(st.lists(loans(), min_size=12, max_size=12))
-@examples(8)
+@settings(examples(8), phases=[Phase.generate])  # a book of twelve shrinks too slowly to wait for
 def test_every_row_of_a_random_book(drawn: list[Loan]) -> None:
     book = [replace(loan, loan_id=f"L-{number}") for number, loan in enumerate(drawn)]
     with TemporaryDirectory() as folder:
@@ -112,6 +112,15 @@ def test_every_row_of_a_random_book(drawn: list[Loan]) -> None:
         theirs = expected(loan)
         if theirs is None:
             assert not mine, loan
+        elif loan.loan_id in refused:
+            assert beyond_a_century(theirs), (refused[loan.loan_id], loan)
         else:
-            assert loan.loan_id not in refused, (refused[loan.loan_id], loan)
             assert mine == [compared(row) for row in theirs], loan
+
+
+def beyond_a_century(rows: list[dict[str, object]]) -> bool:
+    """Whether a payment that decides the term takes longer than the program goes along with."""
+    first, last = rows[0]["date"], rows[-1]["date"]
+    assert isinstance(first, date)
+    assert isinstance(last, date)
+    return last.year - first.year >= 99 or len(rows) > 2_600
