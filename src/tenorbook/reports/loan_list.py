@@ -1,7 +1,6 @@
 """The table of loans on the summary: what one looks for first at the left, the rest beyond the print."""
 
 from collections.abc import Callable, Mapping, Sequence
-from typing import Any
 
 from tenorbook.basis.conventions import Side
 from tenorbook.reports.figures import Figures
@@ -165,11 +164,15 @@ class LoanList:
         )
 
     def _carried(self) -> list[Column]:
-        values: Callable[[str], list[Any]] = lambda header: [  # noqa: E731
-            each.loan.carried.get(header) for each in self._results
-        ]
+        found = [each.loan.carried for each in self._results]
         return [
-            Column(key=f"carried_{number}", header=header, role=Role.ANY, values=values(header), width=15)
+            Column(
+                key=f"carried_{number}",
+                header=header,
+                role=Role.ANY,
+                values=[carried.get(header) for carried in found],
+                width=15,
+            )
             for number, header in enumerate(self._headers)
         ]
 

@@ -102,6 +102,7 @@ class QuickZip(ZipFile):
         """As `ZipFile.open`."""
         member = super().open(*arguments, **more)
         if isinstance(getattr(member, "_compressor", None), type(zlib.compressobj())):
+            # The one attribute to exchange; a zip file offers no way to name a compressor of one's own.
             member._compressor = _packer()  # type: ignore[attr-defined]
         return member
 
