@@ -89,6 +89,6 @@ def test_no_colour_when_asked(monkeypatch: pytest.MonkeyPatch) -> None:
             return True
 
     monkeypatch.delenv("NO_COLOR", raising=False)
-    assert coloured(Terminal())  # type: ignore[arg-type]
+    assert coloured(Terminal())  # type: ignore[arg-type]  # all of a terminal that is asked
     monkeypatch.setenv("NO_COLOR", "1")
-    assert not coloured(Terminal())  # type: ignore[arg-type]
+    assert not coloured(Terminal())  # type: ignore[arg-type]  # all of a terminal that is asked

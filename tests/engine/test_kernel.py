@@ -156,7 +156,7 @@ def test_runs_are_really_taken(monkeypatch: pytest.MonkeyPatch) -> None:
     usable = plain._usable
 
     def watched(*args: object) -> int:
-        taken.append(usable(*args))  # type: ignore[arg-type]
+        taken.append(usable(*args))  # type: ignore[arg-type]  # passed on as they come
         return taken[-1]
 
     monkeypatch.setattr(plain, "_usable", watched)

@@ -583,9 +583,9 @@ def test_an_extra_with_the_payments_follows_their_month_ends() -> None:
         {"payment": 100.0},
         {"balloon": 100.0},
         {"extra_each_payment": 1.0},
-        {"payment_rounding": PaymentStep(PaymentRounding.UP, 1.0)},  # type: ignore[arg-type]
-        {"extra_payments": (ExtraPayment(date=date(2024, 2, 1), amount=1.0),)},  # type: ignore[arg-type]
-        {"rate_changes": (RateChange(from_date=date(2024, 2, 1), annual_rate=0.1),)},  # type: ignore[arg-type]
+        {"payment_rounding": PaymentStep(PaymentRounding.UP, 1.0)},  # type: ignore[arg-type]  # a float
+        {"extra_payments": (ExtraPayment(date=date(2024, 2, 1), amount=1.0),)},  # type: ignore[arg-type]  # a float
+        {"rate_changes": (RateChange(from_date=date(2024, 2, 1), annual_rate=0.1),)},  # type: ignore[arg-type]  # a float
     ],
 )
 def test_floats_are_refused(terms: dict[str, Any]) -> None:

@@ -134,12 +134,10 @@ class Accrual:
         return False
 
     def drop(self, item: Item) -> None:
-        """Forgets an item that is never charged."""
+        """Forgets an item that has nothing left to post, or is never charged."""
         self.amounts.pop(item, None)
         self.parts = [part for part in self.parts if part.item is not item]
 
-    def clear(self) -> tuple[Part, ...]:
-        """Starts anew after posting; returns the stretches that were posted."""
-        parts = tuple(self.parts)
+    def clear(self) -> None:
+        """Starts anew after posting."""
         self.amounts, self.parts, self.paid_rows = {}, [], []
-        return parts

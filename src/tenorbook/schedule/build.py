@@ -41,7 +41,10 @@ def _walk_planned(terms: Terms) -> State:
     if terms.payment is None:
         return walk(make_steps(terms), Plan(terms.count, terms.balloon or 0))
     undisturbed = _undisturbed(terms)
-    plan = Plan(terms.count or undisturbed.paid, terms.balloon or _implied_balloon(undisturbed))
+    implied = 0 if terms.balloon else _implied_balloon(undisturbed)
+    if not (implied or terms.extras or terms.repricings or terms.each_payment):
+        return undisturbed
+    plan = Plan(terms.count or undisturbed.paid, terms.balloon or implied)
     maturity = None if terms.count else undisturbed.columns.date[-1]
     return walk(make_steps(terms, maturity), plan)
 

@@ -123,7 +123,8 @@ def _reaches_end(state: State, left: int) -> bool:
 def _last_in_advance(state: State, regular: int, owed: int) -> int:
     """The last payment in advance: it leaves the balloon, due one period later, and takes the rest.
 
-    Where the note's own payment or an extra decides what is left, that is the balloon.
+    Where the note's own payment decides what is left, or more payments than the term sized it, that is
+    the balloon. A loan that comes down to its stated balloon early leaves just that.
     """
     if not state.amortizing(state.paid + 1):
         return regular

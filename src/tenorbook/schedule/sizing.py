@@ -118,11 +118,11 @@ class Sizer:
         terms = self.steps.terms
         with localcontext(PRECISION):
             if terms.repayment is Repayment.LEVEL_PRINCIPAL:
-                exact = Decimal(balance - balloon) / self.remaining(paid)
+                unrounded = Decimal(balance - balloon) / self.remaining(paid)
             else:
                 growth = self._growth(rate, paid)
-                exact = (balance * growth.balance - balloon) / growth.payments
-        return round_payment(exact, terms.payment_rounding, terms.payment_step)
+                unrounded = (balance * growth.balance - balloon) / growth.payments
+        return round_payment(unrounded, terms.payment_rounding, terms.payment_step)
 
     def _growth(self, rate: Decimal, paid: int) -> Growth:
         """From the payment numbered `paid` (or the last interest-only one) to the last that sizes."""

@@ -142,7 +142,7 @@ def _write_plain(worksheet: "Worksheet", plain: PlainCell) -> None:
     cell = worksheet.cell(plain.row, plain.column)
     value = plain.shown if plain.value is None else plain.value
     if not isinstance(value, str):
-        cell.value = value  # type: ignore[assignment]
+        cell.value = value  # type: ignore[assignment]  # the stubs know fewer kinds of value than the cell
         if plain.number_format:
             cell.number_format = plain.number_format
         return
@@ -175,8 +175,8 @@ def _anchor(worksheet: "Worksheet", address: str) -> "OpenpyxlCell":
     """The cell itself, or the first one of the merged range that it lies in: only that can be marked."""
     for merged in worksheet.merged_cells.ranges:
         if address in merged:
-            return worksheet.cell(merged.min_row, merged.min_col)  # type: ignore[return-value]
-    return worksheet[address]  # type: ignore[no-any-return]
+            return worksheet.cell(merged.min_row, merged.min_col)  # type: ignore[return-value]  # the top left of a merge is a cell
+    return worksheet[address]  # type: ignore[no-any-return]  # one address gives one cell
 
 
 def _mark_cell(cell: "OpenpyxlCell", problems: Sequence[Problem]) -> None:

@@ -19,7 +19,7 @@ from xlsxwriter.workbook import Workbook as Writer
 try:
     from isal import isal_zlib as _quick
 except ImportError:
-    _quick = None  # type: ignore[assignment]
+    _quick = None  # type: ignore[assignment]  # a module where it is installed
 
 ROWS_HERE = "<!--rows-->"
 """Where the rows belong in a sheet's part."""
@@ -120,7 +120,7 @@ class QuickZip(ZipFile):
                 member.write(stretch)
 
 
-class QuickWriter(Writer):  # type: ignore[misc]
+class QuickWriter(Writer):  # type: ignore[misc]  # the library is not typed
     """XlsxWriter's workbook, packed by `QuickZip`; its sheets are `RowSheet`s."""
 
     def _store_workbook(self) -> None:

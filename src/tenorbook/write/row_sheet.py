@@ -11,7 +11,7 @@ from xlsxwriter.worksheet import Worksheet
 from tenorbook.write.package import ROWS_HERE, PackedRows
 
 
-class RowSheet(Worksheet):  # type: ignore[misc]
+class RowSheet(Worksheet):  # type: ignore[misc]  # the library is not typed
     """A worksheet filled with `put_rows` only.
 
     Attributes:
